@@ -1,0 +1,315 @@
+import { checkFinite, checkWithin } from './check.ts';
+import type { Evening, Instant } from './evening.ts';
+import { DAY_MS, eveningSpan, HOUR_MS } from './evening.ts';
+import type { SunDay } from './sun-day.ts';
+import { noonTurnsIn, sinDeclinationIn, sunDayOf } from './sun-day.ts';
+
+export type Position = { latitudeDeg: number; longitudeDeg: number };
+export type Place = Position & { timeZone: string };
+
+/** What a night is like at one altitude: whether the sun sinks below it, and whether it comes back. */
+export type SunState = 'normal' | 'never-dark' | 'never-light' | 'dusk-only' | 'dawn-only';
+
+/** When the sun sinks below an altitude and when it is back, null where it does not. */
+export type DarkSpell = { state: SunState; duskAt: Instant | null; dawnAt: Instant | null };
+
+/** One night of one place, from solar noon to solar noon, ready to be asked for crossings. */
+export type Night = {
+  startAt: Instant;
+  endAt: Instant;
+  sinLatitude: number;
+  cosLatitude: number;
+  /** The UT day that holds its midnight; `...Days` below count from that day's 0h. */
+  sunDay: SunDay;
+  startDays: number;
+  endDays: number;
+  /** Hour angle in turns = days - this + the sun day's noon turns, 0 at the noon that begins the night. */
+  turnsOrigin: number;
+};
+
+const RAD_PER_DEG = Math.PI / 180;
+const RAD_PER_TURN = 2 * Math.PI;
+// The sun's declination moves up to 0.2 deg between midnight and noon. Nights whose extreme altitude lies within
+// twice that (as a sine) of the altitude asked for are searched instead of solved.
+const GRAZING_SINE = 0.008;
+// Nearer a pole than 0.06 deg the noon of a meridian means nothing.
+const POLAR_COSINE = 0.001;
+const SOLVED_DAYS = 1e-7;
+const MOST_ROUNDS = 8;
+const SEARCH_STEPS = 48;
+
+function checkPosition(position: Position): void {
+  checkWithin(position.latitudeDeg, 'latitudeDeg', { min: -90, max: 90 });
+  checkWithin(position.longitudeDeg, 'longitudeDeg', { min: -180, max: 180 });
+}
+
+/**
+ * Altitude of the sun's centre above the horizon: geocentric, without refraction or the observer's height.
+ * Source: Meeus, Astronomical Algorithms, ch. 13 (13.6), with the sun of `sun-day.ts`.
+ * Valid 1900..2199; within 0.003 deg in 2015..2055.
+ * @param at the instant, UT1 taken as UTC
+ * @param position latitude -90..90 (geodetic), longitude -180..180 (east positive)
+ * @throws ProgrammerError outside these ranges
+ */
+export function sunAltitudeDeg(at: Instant, position: Position): number {
+  checkPosition(position);
+  checkFinite(at, 'at');
+  const day = Math.floor(at / DAY_MS);
+  const days = at / DAY_MS - day;
+  const sunDay = sunDayOf(day);
+  const hourTurns = days + position.longitudeDeg / 360 + noonTurnsIn(sunDay, days) - 0.5;
+  const sinDeclination = sinDeclinationIn(sunDay, days);
+  const latitudeRad = position.latitudeDeg * RAD_PER_DEG;
+  const sinAltitude =
+    Math.sin(latitudeRad) * sinDeclination +
+    Math.cos(latitudeRad) *
+      Math.sqrt(1 - sinDeclination * sinDeclination) *
+      Math.cos(hourTurns * RAD_PER_TURN);
+  return Math.asin(Math.max(-1, Math.min(1, sinAltitude))) / RAD_PER_DEG;
+}
+
+// Count of solar noons at this longitude up to the one nearest to an instant.
+function nearestNoon(at: Instant, longitudeDeg: number): number {
+  const day = Math.floor(at / DAY_MS);
+  const days = at / DAY_MS - day;
+  return Math.round(day + days + longitudeDeg / 360 + noonTurnsIn(sunDayOf(day), days) - 0.5);
+}
+
+function nightAfterNoon(noon: number, position: Position): Night {
+  const midnight = noon + 1 - position.longitudeDeg / 360;
+  const day = Math.floor(midnight);
+  const sunDay = sunDayOf(day);
+  const turnsOrigin = noon + 0.5 - position.longitudeDeg / 360 - day;
+  const startDays = turnsOrigin - noonTurnsIn(sunDay, turnsOrigin);
+  const endDays = turnsOrigin + 1 - noonTurnsIn(sunDay, turnsOrigin + 1);
+  const latitudeRad = position.latitudeDeg * RAD_PER_DEG;
+  return {
+    startAt: Math.round((day + startDays) * DAY_MS),
+    endAt: Math.round((day + endDays) * DAY_MS),
+    sinLatitude: Math.sin(latitudeRad),
+    cosLatitude: Math.cos(latitudeRad),
+    sunDay,
+    startDays,
+    endDays,
+    turnsOrigin,
+  };
+}
+
+function isPolar(position: Position): boolean {
+  return Math.cos(position.latitudeDeg * RAD_PER_DEG) < POLAR_COSINE;
+}
+
+// At a pole the night is the evening itself, since every meridian's noon is as good as any other.
+function polarNight(evening: Evening, place: Place): Night {
+  const { startAt, endAt } = eveningSpan(evening, place.timeZone);
+  const night = nightAfterNoon(nearestNoon(startAt, place.longitudeDeg), place);
+  const day = Math.floor((startAt + endAt) / 2 / DAY_MS);
+  return {
+    ...night,
+    startAt,
+    endAt,
+    sunDay: sunDayOf(day),
+    startDays: startAt / DAY_MS - day,
+    endDays: endAt / DAY_MS - day,
+    turnsOrigin: 0.5 - place.longitudeDeg / 360,
+  };
+}
+
+/**
+ * The night an evening is named after: from the solar noon nearest to its local noon to the solar noon after.
+ * Within 0.06 deg of a pole: the evening itself. In a zone that skipped the date: the night of the date after.
+ * Solar noon, not the clock's, so that dusk comes before dawn whatever zone a place keeps.
+ * @param evening the evening
+ * @param place latitude -90..90, longitude -180..180, IANA zone
+ * @throws ProgrammerError outside these ranges
+ */
+export function nightOf(evening: Evening, place: Place): Night {
+  checkPosition(place);
+  if (isPolar(place)) return polarNight(evening, place);
+  return nightAfterNoon(nearestNoon(eveningSpan(evening, place.timeZone).startAt, place.longitudeDeg), place);
+}
+
+/**
+ * Every night that shares time with an evening, in order; together they cover it. Usually two, since local noon is
+ * seldom solar noon.
+ * @param evening the evening
+ * @param place latitude -90..90, longitude -180..180, IANA zone
+ * @throws ProgrammerError outside these ranges
+ */
+export function nightsDuring(evening: Evening, place: Place): Night[] {
+  checkPosition(place);
+  if (isPolar(place)) return [polarNight(evening, place)];
+  const { startAt, endAt } = eveningSpan(evening, place.timeZone);
+  const first = nearestNoon(startAt, place.longitudeDeg) - 1;
+  const last = nearestNoon(endAt, place.longitudeDeg);
+  const nights: Night[] = [];
+  for (let noon = first; noon <= last; noon += 1) {
+    const night = nightAfterNoon(noon, place);
+    if (night.startAt < endAt && night.endAt > startAt) nights.push(night);
+  }
+  return nights;
+}
+
+function sinAltitudeIn(night: Night, days: number): number {
+  const sinDeclination = sinDeclinationIn(night.sunDay, days);
+  const hourTurns = days - night.turnsOrigin + noonTurnsIn(night.sunDay, days);
+  return (
+    night.sinLatitude * sinDeclination +
+    night.cosLatitude * Math.sqrt(1 - sinDeclination * sinDeclination) * Math.cos(hourTurns * RAD_PER_TURN)
+  );
+}
+
+function instantIn(night: Night, days: number): Instant {
+  return night.startAt + Math.round((days - night.startDays) * DAY_MS);
+}
+
+// The hour angle is solved again with the declination of each answer. One Newton step would be as quick but goes astray
+// where the sun grazes the altitude.
+function solvedDays(night: Night, sinAltitude: number, side: 'dusk' | 'dawn'): number {
+  let days = night.turnsOrigin + 0.5;
+  for (let round = 0; round < MOST_ROUNDS; round += 1) {
+    const sinDeclination = sinDeclinationIn(night.sunDay, days);
+    const cosDeclination = Math.sqrt(1 - sinDeclination * sinDeclination);
+    const cosHour = (sinAltitude - night.sinLatitude * sinDeclination) / (night.cosLatitude * cosDeclination);
+    const hourTurns = Math.acos(cosHour) / RAD_PER_TURN;
+    const fromOrigin = side === 'dusk' ? hourTurns : 1 - hourTurns;
+    const nextDays = night.turnsOrigin + fromOrigin - noonTurnsIn(night.sunDay, days);
+    const movedDays = Math.abs(nextDays - days);
+    days = nextDays;
+    if (movedDays < SOLVED_DAYS) break;
+  }
+  return days;
+}
+
+// Where within a stretch the sun is lowest (sense -1) or highest (sense 1); thirds are enough, it is done seldom.
+function extremeDays(night: Night, stretch: { from: number; until: number }, sense: 1 | -1): number {
+  let { from, until } = stretch;
+  for (let round = 0; round < 40; round += 1) {
+    const third = (until - from) / 3;
+    const early = sense * sinAltitudeIn(night, from + third);
+    const late = sense * sinAltitudeIn(night, until - third);
+    if (early < late) from += third;
+    else until -= third;
+  }
+  return (from + until) / 2;
+}
+
+// Samples of the night, thickened by the turning points between them, so that a brief dip is not stepped over.
+function samplesOf(night: Night): number[] {
+  const step = (night.endDays - night.startDays) / SEARCH_STEPS;
+  const days = Array.from({ length: SEARCH_STEPS + 1 }, (_, index) => night.startDays + index * step);
+  const heights = days.map((each) => sinAltitudeIn(night, each));
+  const turning: number[] = [];
+  for (let index = 0; index <= SEARCH_STEPS; index += 1) {
+    const before = heights[index - 1] ?? heights[index]!;
+    const after = heights[index + 1] ?? heights[index]!;
+    const stretch = {
+      from: Math.max(night.startDays, days[index]! - step),
+      until: Math.min(night.endDays, days[index]! + step),
+    };
+    if (heights[index]! <= before && heights[index]! <= after) turning.push(extremeDays(night, stretch, -1));
+    if (heights[index]! >= before && heights[index]! >= after) turning.push(extremeDays(night, stretch, 1));
+  }
+  return [...days, ...turning].sort((a, b) => a - b);
+}
+
+function crossingDays(night: Night, stretch: { from: number; until: number }, sinAltitude: number): number {
+  let { from, until } = stretch;
+  const startsBelow = sinAltitudeIn(night, from) < sinAltitude;
+  for (let round = 0; round < 32; round += 1) {
+    const middle = (from + until) / 2;
+    if (sinAltitudeIn(night, middle) < sinAltitude === startsBelow) from = middle;
+    else until = middle;
+  }
+  return (from + until) / 2;
+}
+
+function searchedSpell(night: Night, sinAltitude: number): DarkSpell {
+  const days = samplesOf(night);
+  const below = days.map((each) => sinAltitudeIn(night, each) < sinAltitude);
+  let firstDown: number | null = null;
+  let lastUp: number | null = null;
+  for (let index = 1; index < days.length; index += 1) {
+    if (below[index] === below[index - 1]) continue;
+    const stretch = { from: days[index - 1]!, until: days[index]! };
+    if (!below[index]) lastUp = crossingDays(night, stretch, sinAltitude);
+    else firstDown ??= crossingDays(night, stretch, sinAltitude);
+  }
+  // Light only in the middle happens next to a pole alone; what counts is that it ends dark.
+  if (firstDown !== null && lastUp !== null && lastUp < firstDown) lastUp = null;
+  const duskAt = firstDown === null ? null : instantIn(night, firstDown);
+  const dawnAt = lastUp === null ? null : instantIn(night, lastUp);
+  if (duskAt !== null) return { state: dawnAt === null ? 'dusk-only' : 'normal', duskAt, dawnAt };
+  if (dawnAt !== null) return { state: 'dawn-only', duskAt, dawnAt };
+  return { state: below[0] ? 'never-light' : 'never-dark', duskAt, dawnAt };
+}
+
+/**
+ * When in one night the sun first sinks below an altitude, and when it last rises above it.
+ * Ours: hour angle of the altitude re-solved at the sun's place of each answer; a search where the sun grazes it.
+ * Within 5 s where the sun crosses at 5 deg/h or faster, else within 0.01 deg of altitude (2015..2055); presence is
+ * right when the extreme altitude misses by more than 0.05 deg. Terrain, and weather beyond the mean refraction that
+ * is part of an altitude like -0.833, are not in it.
+ * @param night from `nightOf` or `nightsDuring`
+ * @param altitudeDeg altitude of the sun's centre; Infinity is always dark, -Infinity never
+ */
+export function darkSpellIn(night: Night, altitudeDeg: number): DarkSpell {
+  checkWithin(altitudeDeg, 'altitudeDeg', { min: -Infinity, max: Infinity });
+  if (altitudeDeg >= 90) return { state: 'never-light', duskAt: null, dawnAt: null };
+  if (altitudeDeg <= -90) return { state: 'never-dark', duskAt: null, dawnAt: null };
+  const sinAltitude = Math.sin(altitudeDeg * RAD_PER_DEG);
+  const sinDeclination = sinDeclinationIn(night.sunDay, night.turnsOrigin + 0.5);
+  const middle = night.sinLatitude * sinDeclination;
+  const swing = night.cosLatitude * Math.sqrt(1 - sinDeclination * sinDeclination);
+  if (sinAltitude < middle - swing - GRAZING_SINE) return { state: 'never-dark', duskAt: null, dawnAt: null };
+  if (sinAltitude > middle + swing + GRAZING_SINE)
+    return { state: 'never-light', duskAt: null, dawnAt: null };
+  if (sinAltitude < middle - swing + GRAZING_SINE || sinAltitude > middle + swing - GRAZING_SINE) {
+    return searchedSpell(night, sinAltitude);
+  }
+  return {
+    state: 'normal',
+    duskAt: instantIn(night, solvedDays(night, sinAltitude, 'dusk')),
+    dawnAt: instantIn(night, solvedDays(night, sinAltitude, 'dawn')),
+  };
+}
+
+/**
+ * Dusk and dawn of an evening at an altitude: `darkSpellIn` the night of `nightOf`.
+ * @param evening the evening
+ * @param place latitude -90..90, longitude -180..180, IANA zone
+ * @param altitudeDeg altitude of the sun's centre: -0.833 sunset and sunrise, -6 civil dusk and dawn
+ * @throws ProgrammerError outside these ranges
+ */
+export function darkSpell(evening: Evening, place: Place, altitudeDeg: number): DarkSpell {
+  return darkSpellIn(nightOf(evening, place), altitudeDeg);
+}
+
+/**
+ * From when until when a night is dark, by its spell: edges of the night stand in for a missing dusk or dawn.
+ * @param night the night
+ * @param spell its spell at some altitude
+ * @returns null where it never gets dark
+ */
+export function darkStretch(night: Night, spell: DarkSpell): { fromAt: Instant; untilAt: Instant } | null {
+  if (spell.state === 'never-dark') return null;
+  return { fromAt: spell.duskAt ?? night.startAt, untilAt: spell.dawnAt ?? night.endAt };
+}
+
+/**
+ * Hours of an evening, local noon to local noon, with the sun below an altitude.
+ * @param evening the evening
+ * @param place latitude -90..90, longitude -180..180, IANA zone
+ * @param altitudeDeg altitude of the sun's centre
+ * @throws ProgrammerError outside these ranges
+ */
+export function darkHoursOf(evening: Evening, place: Place, altitudeDeg: number): number {
+  const { startAt, endAt } = eveningSpan(evening, place.timeZone);
+  let darkMs = 0;
+  for (const night of nightsDuring(evening, place)) {
+    const dark = darkStretch(night, darkSpellIn(night, altitudeDeg));
+    if (dark === null) continue;
+    darkMs += Math.max(0, Math.min(dark.untilAt, endAt) - Math.max(dark.fromAt, startAt));
+  }
+  return darkMs / HOUR_MS;
+}
