@@ -1,0 +1,45 @@
+import { and, asc, eq, getTableColumns, notInArray } from 'drizzle-orm';
+import type { Evening, Instant } from '../model/evening.ts';
+import type { Db } from './open.ts';
+import { dueEvenings } from './schema.ts';
+
+/** What calendars were last told of an evening on which sets must be swapped. */
+export type DueEvent = {
+  uid: string;
+  siteId: string;
+  evening: Evening;
+  /** Counts the changes that were told, from 0. */
+  sequence: number;
+  createdAt: Instant;
+  modifiedAt: Instant;
+  state: 'due' | 'cancelled';
+  /** Of the content last told: another one means a change. */
+  fingerprint: string;
+  propIds: string[];
+};
+
+/** What was told of the site, by evening. */
+export function listDueEvents(db: Db, siteId: string): DueEvent[] {
+  const inOrder = [asc(dueEvenings.evening), asc(dueEvenings.uid)];
+  return db
+    .select(getTableColumns(dueEvenings))
+    .from(dueEvenings)
+    .where(eq(dueEvenings.siteId, siteId))
+    .orderBy(...inOrder)
+    .all();
+}
+
+/** Keeps these events of the site, new or changed, and drops its others; call it inside a transaction. */
+export function saveDueEvents(db: Db, siteId: string, events: readonly DueEvent[]): void {
+  const uids = events.map((event) => event.uid);
+  db.delete(dueEvenings)
+    .where(and(eq(dueEvenings.siteId, siteId), notInArray(dueEvenings.uid, uids)))
+    .run();
+  for (const event of events) {
+    const { uid, ...content } = { ...event, siteId };
+    db.insert(dueEvenings)
+      .values({ uid, ...content })
+      .onConflictDoUpdate({ target: dueEvenings.uid, set: content })
+      .run();
+  }
+}

@@ -1,0 +1,100 @@
+import { and, asc, count, eq, getTableColumns, sql } from 'drizzle-orm';
+import type { Prop } from '../model/prop.ts';
+import type { Db } from './open.ts';
+import { preparedOnce, present } from './rows.ts';
+import { props } from './schema.ts';
+import { tagOrder } from './tag-order.ts';
+
+type PropRow = typeof props.$inferSelect;
+
+const { tagOrder: _, ...propColumns } = getTableColumns(props);
+
+/** Absent fields become null, so that an update also takes away what is no longer given. */
+function rowOf(prop: Prop): PropRow {
+  return {
+    ...prop,
+    tagOrder: tagOrder(prop.tag),
+    xM: prop.xM ?? null,
+    yM: prop.yM ?? null,
+    stopVolts: prop.stopVolts ?? null,
+    trips: prop.trips ?? null,
+    offsetC: prop.offsetC ?? null,
+  };
+}
+
+const statements = preparedOnce((db) => {
+  const ofSite = eq(props.siteId, sql.placeholder('siteId'));
+  const inOrder = () => db.select(propColumns).from(props);
+  return {
+    find: db
+      .select(propColumns)
+      .from(props)
+      .where(eq(props.id, sql.placeholder('propId')))
+      .prepare(),
+    all: inOrder().where(ofSite).orderBy(asc(props.tagOrder), asc(props.tag)).prepare(),
+    page: inOrder()
+      .where(
+        and(
+          ofSite,
+          sql`(${props.tagOrder}, ${props.tag}) > (${sql.placeholder('order')}, ${sql.placeholder('tag')})`,
+        ),
+      )
+      .orderBy(asc(props.tagOrder), asc(props.tag))
+      .limit(sql.placeholder('limit'))
+      .prepare(),
+  };
+});
+
+/** Keeps a new prop. Throws SqliteError when its id or its tag on the site is taken or a value is out of bounds. */
+export function insertProp(db: Db, prop: Prop): void {
+  db.insert(props).values(rowOf(prop)).run();
+}
+
+/** The prop, or null. */
+export function findProp(db: Db, propId: string): Prop | null {
+  const row = statements(db).find.get({ propId });
+  return row ? present(row) : null;
+}
+
+/** The prop with this tag on the site, or null. Case counts. */
+export function findPropByTag(db: Db, siteId: string, tag: string): Prop | null {
+  const row = db
+    .select(propColumns)
+    .from(props)
+    .where(and(eq(props.siteId, siteId), eq(props.tag, tag)))
+    .get();
+  return row ? present(row) : null;
+}
+
+/**
+ * The site's props by tag, A-2 before A-10.
+ * @param page `limit` all when absent; `after` the tag of the last prop of the page before
+ */
+export function listProps(db: Db, siteId: string, page: { limit?: number; after?: string } = {}): Prop[] {
+  const { limit, after } = page;
+  const rows =
+    limit === undefined && after === undefined
+      ? statements(db).all.all({ siteId })
+      : statements(db).page.all({
+          siteId,
+          order: tagOrder(after ?? ''),
+          tag: after ?? '',
+          limit: limit ?? -1,
+        });
+  return rows.map(present);
+}
+
+/** Replaces every field of the prop with this id; optional fields not given are taken away. */
+export function updateProp(db: Db, prop: Prop): void {
+  db.update(props).set(rowOf(prop)).where(eq(props.id, prop.id)).run();
+}
+
+/** Removes the prop with its log; false when there was none. */
+export function removeProp(db: Db, propId: string): boolean {
+  return db.delete(props).where(eq(props.id, propId)).run().changes > 0;
+}
+
+/** How many props the site has. */
+export function countProps(db: Db, siteId: string): number {
+  return db.select({ props: count() }).from(props).where(eq(props.siteId, siteId)).get()?.props ?? 0;
+}
