@@ -142,7 +142,14 @@ export function weekdayOf(evening: Evening): 1 | 2 | 3 | 4 | 5 | 6 | 7 {
 
 /** From this instant on, wall clocks show UTC plus this much. */
 type OffsetChange = { fromAt: Instant; offsetMs: number };
-type ZoneOffsets = { zone: IANAZone; stretches: Map<number, OffsetChange[]> };
+type ZoneOffsets = {
+  zone: IANAZone;
+  stretches: Map<number, OffsetChange[]>;
+  /** The last answer, and how long it holds: most questions come from one season, one after the other. */
+  unchangedFromAt: Instant;
+  unchangedUntilAt: Instant;
+  unchangedMs: number;
+};
 
 // One question to Intl costs thousands of nanoseconds, so each zone is asked once a day of a stretch, and the few
 // changes found are kept.
@@ -166,7 +173,13 @@ function offsetsOf(timeZone: string): ZoneOffsets {
   if (offsets === undefined) {
     check(isTimeZone(timeZone), `"${timeZone}" is no IANA time zone.`);
     if (zonesKept.size >= MOST_ZONES_KEPT) zonesKept.clear();
-    offsets = { zone: IANAZone.create(timeZone), stretches: new Map() };
+    offsets = {
+      zone: IANAZone.create(timeZone),
+      stretches: new Map(),
+      unchangedFromAt: 0,
+      unchangedUntilAt: 0,
+      unchangedMs: 0,
+    };
     zonesKept.set(timeZone, offsets);
   }
   lastAsked = { timeZone, offsets };
@@ -199,6 +212,7 @@ function changesInStretch(zone: IANAZone, stretch: number): OffsetChange[] {
 }
 
 function offsetMsAt(at: Instant, offsets: ZoneOffsets): number {
+  if (at >= offsets.unchangedFromAt && at < offsets.unchangedUntilAt) return offsets.unchangedMs;
   const stretch = Math.floor(at / STRETCH_MS);
   let changes = offsets.stretches.get(stretch);
   if (changes === undefined) {
@@ -207,7 +221,10 @@ function offsetMsAt(at: Instant, offsets: ZoneOffsets): number {
   }
   let index = changes.length - 1;
   while (index > 0 && changes[index]!.fromAt > at) index -= 1;
-  return changes[index]!.offsetMs;
+  offsets.unchangedFromAt = changes[index]!.fromAt;
+  offsets.unchangedUntilAt = changes[index + 1]?.fromAt ?? (stretch + 1) * STRETCH_MS;
+  offsets.unchangedMs = changes[index]!.offsetMs;
+  return offsets.unchangedMs;
 }
 
 /**
@@ -215,16 +232,29 @@ function offsetMsAt(at: Instant, offsets: ZoneOffsets): number {
  * A time that a clock change skips is moved forward by the skip; one that comes twice is the first of the two.
  */
 function instantOfWall(wallMs: number, offsets: ZoneOffsets): Instant {
-  const earlierMs = offsetMsAt(wallMs - WIDEST_OFFSET_MS, offsets);
-  const laterMs = offsetMsAt(wallMs + WIDEST_OFFSET_MS, offsets);
+  const earliestAt = wallMs - WIDEST_OFFSET_MS;
+  const latestAt = wallMs + WIDEST_OFFSET_MS;
+  const earlierMs = offsetMsAt(earliestAt, offsets);
+  if (offsets.unchangedUntilAt > latestAt) return wallMs - earlierMs;
+  const laterMs = offsetMsAt(latestAt, offsets);
   const firstAt = wallMs - earlierMs;
-  if (earlierMs === laterMs || offsetMsAt(firstAt, offsets) === earlierMs) return firstAt;
+  if (offsetMsAt(firstAt, offsets) === earlierMs) return firstAt;
   const secondAt = wallMs - laterMs;
   return offsetMsAt(secondAt, offsets) === laterMs ? secondAt : firstAt;
 }
 
 function noonAt(days: number, offsets: ZoneOffsets): Instant {
   return instantOfWall(days * DAY_MS + NOON_MS, offsets);
+}
+
+/**
+ * The local noon an evening begins with.
+ * @param evening the evening
+ * @param timeZone IANA name
+ * @throws ProgrammerError for a date or zone that does not exist
+ */
+export function localNoonAt(evening: Evening, timeZone: string): Instant {
+  return noonAt(checkedDayNumber(evening), offsetsOf(timeZone));
 }
 
 /**

@@ -1,6 +1,6 @@
-import { checkFinite, checkWithin } from './check.ts';
+import { check, checkFinite, checkWithin } from './check.ts';
 import type { Evening, Instant } from './evening.ts';
-import { DAY_MS, eveningSpan, HOUR_MS } from './evening.ts';
+import { DAY_MS, eveningSpan, HOUR_MS, localNoonAt } from './evening.ts';
 import type { SunDay } from './sun-day.ts';
 import { noonTurnsIn, sinDeclinationIn, sunDayOf } from './sun-day.ts';
 
@@ -19,28 +19,29 @@ export type Night = {
   endAt: Instant;
   sinLatitude: number;
   cosLatitude: number;
-  /** The UT day that holds its midnight; `...Days` below count from that day's 0h. */
+  /** The UT day that holds its midnight, as days since 1970-01-01. */
+  day: number;
   sunDay: SunDay;
-  startDays: number;
-  endDays: number;
-  /** Hour angle in turns = days - this + the sun day's noon turns, 0 at the noon that begins the night. */
+  /** Hour angle in turns = days of that UT day - this + the sun's noon turns, 0 at the noon that begins the night. */
   turnsOrigin: number;
 };
 
 const RAD_PER_DEG = Math.PI / 180;
 const RAD_PER_TURN = 2 * Math.PI;
+const LATITUDES_DEG = { min: -90, max: 90 };
+const LONGITUDES_DEG = { min: -180, max: 180 };
 // The sun's declination moves up to 0.2 deg between midnight and noon. Nights whose extreme altitude lies within
 // twice that (as a sine) of the altitude asked for are searched instead of solved.
 const GRAZING_SINE = 0.008;
 // Nearer a pole than 0.06 deg the noon of a meridian means nothing.
 const POLAR_COSINE = 0.001;
-const SOLVED_DAYS = 1e-7;
-const MOST_ROUNDS = 8;
+// A second of movement leaves an error of some hundredths of a second.
+const SOLVED_DAYS = 1e-5;
 const SEARCH_STEPS = 48;
 
 function checkPosition(position: Position): void {
-  checkWithin(position.latitudeDeg, 'latitudeDeg', { min: -90, max: 90 });
-  checkWithin(position.longitudeDeg, 'longitudeDeg', { min: -180, max: 180 });
+  checkWithin(position.latitudeDeg, 'latitudeDeg', LATITUDES_DEG);
+  checkWithin(position.longitudeDeg, 'longitudeDeg', LONGITUDES_DEG);
 }
 
 /**
@@ -88,9 +89,8 @@ function nightAfterNoon(noon: number, position: Position): Night {
     endAt: Math.round((day + endDays) * DAY_MS),
     sinLatitude: Math.sin(latitudeRad),
     cosLatitude: Math.cos(latitudeRad),
+    day,
     sunDay,
-    startDays,
-    endDays,
     turnsOrigin,
   };
 }
@@ -108,9 +108,8 @@ function polarNight(evening: Evening, place: Place): Night {
     ...night,
     startAt,
     endAt,
+    day,
     sunDay: sunDayOf(day),
-    startDays: startAt / DAY_MS - day,
-    endDays: endAt / DAY_MS - day,
     turnsOrigin: 0.5 - place.longitudeDeg / 360,
   };
 }
@@ -126,7 +125,7 @@ function polarNight(evening: Evening, place: Place): Night {
 export function nightOf(evening: Evening, place: Place): Night {
   checkPosition(place);
   if (isPolar(place)) return polarNight(evening, place);
-  return nightAfterNoon(nearestNoon(eveningSpan(evening, place.timeZone).startAt, place.longitudeDeg), place);
+  return nightAfterNoon(nearestNoon(localNoonAt(evening, place.timeZone), place.longitudeDeg), place);
 }
 
 /**
@@ -160,25 +159,56 @@ function sinAltitudeIn(night: Night, days: number): number {
 }
 
 function instantIn(night: Night, days: number): Instant {
-  return night.startAt + Math.round((days - night.startDays) * DAY_MS);
+  return Math.round((night.day + days) * DAY_MS);
 }
 
-// The hour angle is solved again with the declination of each answer. One Newton step would be as quick but goes astray
-// where the sun grazes the altitude.
-function solvedDays(night: Night, sinAltitude: number, side: 'dusk' | 'dawn'): number {
-  let days = night.turnsOrigin + 0.5;
-  for (let round = 0; round < MOST_ROUNDS; round += 1) {
-    const sinDeclination = sinDeclinationIn(night.sunDay, days);
-    const cosDeclination = Math.sqrt(1 - sinDeclination * sinDeclination);
-    const cosHour = (sinAltitude - night.sinLatitude * sinDeclination) / (night.cosLatitude * cosDeclination);
-    const hourTurns = Math.acos(cosHour) / RAD_PER_TURN;
-    const fromOrigin = side === 'dusk' ? hourTurns : 1 - hourTurns;
-    const nextDays = night.turnsOrigin + fromOrigin - noonTurnsIn(night.sunDay, days);
-    const movedDays = Math.abs(nextDays - days);
+// Turns from the nearer noon at which the sun stands at an altitude, were its declination that of `days`.
+function hourTurnsAt(night: Night, days: number, sinAltitude: number): number {
+  const sinDeclination = sinDeclinationIn(night.sunDay, days);
+  const swing = night.cosLatitude * Math.sqrt(1 - sinDeclination * sinDeclination);
+  return Math.acos((sinAltitude - night.sinLatitude * sinDeclination) / swing) / RAD_PER_TURN;
+}
+
+// Days of the crossing on one side of midnight, from a guess: the hour angle is solved again with the declination of each
+// answer. One Newton step would be as quick but goes astray where the sun grazes the altitude. Each round shrinks the
+// error at least fifty times.
+function solvedDays(night: Night, sinAltitude: number, guess: { days: number; side: 1 | -1 }): number {
+  const noonDays = night.turnsOrigin + (guess.side === 1 ? 0 : 1);
+  let days = guess.days;
+  for (let movedDays = 1; movedDays > SOLVED_DAYS; ) {
+    const hourTurns = guess.side * hourTurnsAt(night, days, sinAltitude);
+    const nextDays = noonDays + hourTurns - noonTurnsIn(night.sunDay, days);
+    movedDays = Math.abs(nextDays - days);
     days = nextDays;
-    if (movedDays < SOLVED_DAYS) break;
   }
   return days;
+}
+
+// Starts from midnight's hour angle, corrected by its slope for the declination of dusk and of dawn; that saves a round.
+function solvedSpell(night: Night, sinAltitude: number): DarkSpell {
+  const { turnsOrigin, sunDay, sinLatitude, cosLatitude } = night;
+  const midnightDays = turnsOrigin + 0.5;
+  const sinDeclination = sinDeclinationIn(sunDay, midnightDays);
+  const cosDeclination = Math.sqrt(1 - sinDeclination * sinDeclination);
+  const cosHour = (sinAltitude - sinLatitude * sinDeclination) / (cosLatitude * cosDeclination);
+  const hourTurns = Math.acos(cosHour) / RAD_PER_TURN;
+  const slopeTurns =
+    (sinLatitude / cosLatitude - (cosHour * sinDeclination) / cosDeclination) /
+    (cosDeclination * Math.sqrt(1 - cosHour * cosHour) * RAD_PER_TURN);
+  const noonTurns = noonTurnsIn(sunDay, midnightDays);
+  const duskDays = turnsOrigin + hourTurns - noonTurns;
+  const dawnDays = turnsOrigin + 1 - hourTurns - noonTurns;
+  const laterTurns = slopeTurns * (sinDeclinationIn(sunDay, duskDays) - sinDeclination);
+  const earlierTurns = slopeTurns * (sinDeclinationIn(sunDay, dawnDays) - sinDeclination);
+  const dusk = solvedDays(night, sinAltitude, {
+    days: duskDays + laterTurns + noonTurns - noonTurnsIn(sunDay, duskDays),
+    side: 1,
+  });
+  const dawn = solvedDays(night, sinAltitude, {
+    days: dawnDays - earlierTurns + noonTurns - noonTurnsIn(sunDay, dawnDays),
+    side: -1,
+  });
+  return { state: 'normal', duskAt: instantIn(night, dusk), dawnAt: instantIn(night, dawn) };
 }
 
 // Where within a stretch the sun is lowest (sense -1) or highest (sense 1); thirds are enough, it is done seldom.
@@ -196,16 +226,18 @@ function extremeDays(night: Night, stretch: { from: number; until: number }, sen
 
 // Samples of the night, thickened by the turning points between them, so that a brief dip is not stepped over.
 function samplesOf(night: Night): number[] {
-  const step = (night.endDays - night.startDays) / SEARCH_STEPS;
-  const days = Array.from({ length: SEARCH_STEPS + 1 }, (_, index) => night.startDays + index * step);
+  const startDays = night.startAt / DAY_MS - night.day;
+  const endDays = night.endAt / DAY_MS - night.day;
+  const step = (endDays - startDays) / SEARCH_STEPS;
+  const days = Array.from({ length: SEARCH_STEPS + 1 }, (_, index) => startDays + index * step);
   const heights = days.map((each) => sinAltitudeIn(night, each));
   const turning: number[] = [];
   for (let index = 0; index <= SEARCH_STEPS; index += 1) {
     const before = heights[index - 1] ?? heights[index]!;
     const after = heights[index + 1] ?? heights[index]!;
     const stretch = {
-      from: Math.max(night.startDays, days[index]! - step),
-      until: Math.min(night.endDays, days[index]! + step),
+      from: Math.max(startDays, days[index]! - step),
+      until: Math.min(endDays, days[index]! + step),
     };
     if (heights[index]! <= before && heights[index]! <= after) turning.push(extremeDays(night, stretch, -1));
     if (heights[index]! >= before && heights[index]! >= after) turning.push(extremeDays(night, stretch, 1));
@@ -254,7 +286,7 @@ function searchedSpell(night: Night, sinAltitude: number): DarkSpell {
  * @param altitudeDeg altitude of the sun's centre; Infinity is always dark, -Infinity never
  */
 export function darkSpellIn(night: Night, altitudeDeg: number): DarkSpell {
-  checkWithin(altitudeDeg, 'altitudeDeg', { min: -Infinity, max: Infinity });
+  check(!Number.isNaN(altitudeDeg), 'altitudeDeg must be a number, but is NaN.');
   if (altitudeDeg >= 90) return { state: 'never-light', duskAt: null, dawnAt: null };
   if (altitudeDeg <= -90) return { state: 'never-dark', duskAt: null, dawnAt: null };
   const sinAltitude = Math.sin(altitudeDeg * RAD_PER_DEG);
@@ -267,11 +299,7 @@ export function darkSpellIn(night: Night, altitudeDeg: number): DarkSpell {
   if (sinAltitude < middle - swing + GRAZING_SINE || sinAltitude > middle + swing - GRAZING_SINE) {
     return searchedSpell(night, sinAltitude);
   }
-  return {
-    state: 'normal',
-    duskAt: instantIn(night, solvedDays(night, sinAltitude, 'dusk')),
-    dawnAt: instantIn(night, solvedDays(night, sinAltitude, 'dawn')),
-  };
+  return solvedSpell(night, sinAltitude);
 }
 
 /**
