@@ -24,23 +24,17 @@ function rowOf(prop: Prop): PropRow {
 
 const statements = preparedOnce((db) => {
   const ofSite = eq(props.siteId, sql.placeholder('siteId'));
-  const inOrder = () => db.select(propColumns).from(props);
   return {
     find: db
       .select(propColumns)
       .from(props)
       .where(eq(props.id, sql.placeholder('propId')))
       .prepare(),
-    all: inOrder().where(ofSite).orderBy(asc(props.tagOrder), asc(props.tag)).prepare(),
-    page: inOrder()
-      .where(
-        and(
-          ofSite,
-          sql`(${props.tagOrder}, ${props.tag}) > (${sql.placeholder('order')}, ${sql.placeholder('tag')})`,
-        ),
-      )
+    all: db
+      .select(propColumns)
+      .from(props)
+      .where(ofSite)
       .orderBy(asc(props.tagOrder), asc(props.tag))
-      .limit(sql.placeholder('limit'))
       .prepare(),
   };
 });
@@ -68,20 +62,23 @@ export function findPropByTag(db: Db, siteId: string, tag: string): Prop | null 
 
 /**
  * The site's props by tag, A-2 before A-10.
- * @param page `limit` all when absent; `after` the tag of the last prop of the page before
+ * @param page `limit` all when absent; `after` id of the last prop of the page before; when that is gone the page is empty
  */
 export function listProps(db: Db, siteId: string, page: { limit?: number; after?: string } = {}): Prop[] {
   const { limit, after } = page;
-  const rows =
-    limit === undefined && after === undefined
-      ? statements(db).all.all({ siteId })
-      : statements(db).page.all({
-          siteId,
-          order: tagOrder(after ?? ''),
-          tag: after ?? '',
-          limit: limit ?? -1,
-        });
-  return rows.map(present);
+  if (limit === undefined && after === undefined) return statements(db).all.all({ siteId }).map(present);
+  const later =
+    after === undefined
+      ? undefined
+      : sql`(${props.tagOrder}, ${props.tag}) > (select last.tag_order, last.tag from props as last where last.id = ${after})`;
+  return db
+    .select(propColumns)
+    .from(props)
+    .where(and(eq(props.siteId, siteId), later))
+    .orderBy(asc(props.tagOrder), asc(props.tag))
+    .limit(limit ?? -1)
+    .all()
+    .map(present);
 }
 
 /** Replaces every field of the prop with this id; optional fields not given are taken away. */

@@ -32,14 +32,18 @@ export function findSite(db: Db, siteId: string): Site | null {
 
 /**
  * A page of sites by name, then id.
- * @param page `limit` 1 or more; `after` name and id of the last site of the page before
+ * @param page `limit` 1 or more; `after` id of the last site of the page before; when that is gone the page is empty
  */
-export function listSites(db: Db, page: { limit: number; after?: { name: string; id: string } }): Site[] {
+export function listSites(db: Db, page: { limit: number; after?: string }): Site[] {
   const { after } = page;
   return db
     .select(siteColumns)
     .from(sites)
-    .where(after ? sql`(${sites.name}, ${sites.id}) > (${after.name}, ${after.id})` : undefined)
+    .where(
+      after !== undefined
+        ? sql`(${sites.name}, ${sites.id}) > (select last.name, last.id from sites as last where last.id = ${after})`
+        : undefined,
+    )
     .orderBy(asc(sites.name), asc(sites.id))
     .limit(page.limit)
     .all();
