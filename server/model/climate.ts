@@ -2,7 +2,8 @@
 
 import { check, checkFinite, checkWithin } from './check.ts';
 import type { Evening, Instant } from './evening.ts';
-import { HOUR_MS } from './evening.ts';
+import { DAY_MS, HOUR_MS } from './evening.ts';
+import { noonTurnsIn, sinDeclinationIn, sunDayOf } from './sun-day.ts';
 
 /** Twelve mean daily minima and maxima, January first, °C. */
 export type MonthlyExtremes = { monthlyMinC: readonly number[]; monthlyMaxC: readonly number[] };
@@ -15,7 +16,8 @@ export type TypicalYear = { standardOffsetHours: number; tempC: Float32Array };
 
 type MonthsClimate = {
   kind: 'months';
-  latitudeDeg: number;
+  sinLatitude: number;
+  cosLatitude: number;
   longitudeDeg: number;
   minKnotsC: Float64Array;
   maxKnotsC: Float64Array;
@@ -39,9 +41,8 @@ export type Climate = MonthsClimate | TypicalYearClimate;
 export const climateOffsetSigmaC = 0.7;
 
 export const YEAR_HOURS = 8760;
-const DAY_MS = 24 * HOUR_MS;
 const YEAR_2000_AT = Date.UTC(2000, 0, 1);
-const RADIAN = Math.PI / 180;
+const TURN = 2 * Math.PI;
 /** Largest minus smallest value of the two-harmonic day shape below. */
 const SHAPE_RANGE = 2.10093;
 /** Days on each side of a date whose same hour is averaged with it. */
@@ -152,7 +153,8 @@ export function climateOf(options: {
   }
   return {
     kind: 'months',
-    latitudeDeg,
+    sinLatitude: Math.sin((latitudeDeg / 360) * TURN),
+    cosLatitude: Math.cos((latitudeDeg / 360) * TURN),
     longitudeDeg,
     minKnotsC: meanPreservingKnots(monthlyMinC),
     maxKnotsC: meanPreservingKnots(monthlyMaxC),
@@ -239,44 +241,33 @@ export function monthlyExtremesOf(typicalYear: TypicalYear): {
  * From twelve months: two harmonics in true solar time, whose range is less than maximum - minimum because mean
  * daily extremes hold weather as well as sun; no sunrise is needed, so polar night works. A typical year is read
  * off its smoothed hours. Never report a coldest night from it: it misses the cold tail by 4 to 12 K.
- * Source: shape and amplitude fitted on 60 US stations and 269 typical years; Astronomical Almanac low-precision Sun.
+ * Source: shape and amplitude fitted on 60 US stations and 269 typical years; the Sun of `sun-day.ts`.
  * @param climate from `climateOf` or `climateOfTypicalYear`
- * @param at epoch milliseconds; the Sun holds within 0.01° for 1950..2050 and well enough for two centuries
+ * @param at epoch milliseconds, 1900..2199
  */
 export function climateTemperatureC(climate: Climate, at: Instant): number {
   return climate.kind === 'months' ? monthsTemperature(climate, at) : typicalYearTemperature(climate, at);
 }
 
 function monthsTemperature(climate: MonthsClimate, at: Instant): number {
-  const { latitudeDeg, longitudeDeg } = climate;
-  const days = (at - YEAR_2000_AT) / DAY_MS;
-  const localDays = days + longitudeDeg / 360;
+  const localDays = (at - YEAR_2000_AT) / DAY_MS + climate.longitudeDeg / 360;
   const months = betweenMonths(positiveShare(localDays / 365.25));
   const minC = curveAt(climate.minKnotsC, months);
   const maxC = curveAt(climate.maxKnotsC, months);
 
-  const { declinationDeg, equationOfTimeDeg } = sunOf(days - 0.5);
-  const solarHour = 24 * positiveShare(localDays + equationOfTimeDeg / 360);
-  const turn = (2 * Math.PI) / 24;
-  const shape = Math.cos(turn * (solarHour - 14.8)) + 0.19 * Math.cos(2 * turn * (solarHour - 0.9));
+  const day = Math.floor(at / DAY_MS);
+  const days = at / DAY_MS - day;
+  const sunDay = sunDayOf(day);
+  const solarTurns = localDays + noonTurnsIn(sunDay, days);
+  const shape =
+    Math.cos(TURN * (solarTurns - 14.8 / 24)) + 0.19 * Math.cos(2 * TURN * (solarTurns - 0.9 / 24));
 
-  const noonSine = Math.sin(RADIAN * Math.max(0, 90 - Math.abs(latitudeDeg - declinationDeg)));
+  const sinDeclination = sinDeclinationIn(sunDay, days);
+  const noonSine =
+    climate.sinLatitude * sinDeclination + climate.cosLatitude * Math.sqrt(1 - sinDeclination ** 2);
   const rangeC = Math.max(0, maxC - minC);
-  const cycleC = Math.max(0.35 * rangeC, rangeC - (2.7 - 1.7 * noonSine));
+  const cycleC = Math.max(0.35 * rangeC, rangeC - (2.7 - 1.7 * Math.max(0, noonSine)));
   return (minC + maxC) / 2 + (cycleC * shape) / SHAPE_RANGE;
-}
-
-function sunOf(daysSince2000Noon: number): { declinationDeg: number; equationOfTimeDeg: number } {
-  const meanLongitudeDeg = 280.46 + 0.9856474 * daysSince2000Noon;
-  const anomaly = RADIAN * (357.528 + 0.9856003 * daysSince2000Noon);
-  const longitude = RADIAN * (meanLongitudeDeg + 1.915 * Math.sin(anomaly) + 0.02 * Math.sin(2 * anomaly));
-  const tilt = RADIAN * (23.439 - 4e-7 * daysSince2000Noon);
-  const ascension = Math.atan2(Math.cos(tilt) * Math.sin(longitude), Math.cos(longitude));
-  const turns = positiveShare((meanLongitudeDeg - ascension / RADIAN + 180) / 360);
-  return {
-    declinationDeg: Math.asin(Math.sin(tilt) * Math.sin(longitude)) / RADIAN,
-    equationOfTimeDeg: 360 * turns - 180,
-  };
 }
 
 function typicalYearTemperature(climate: TypicalYearClimate, at: Instant): number {

@@ -3,6 +3,7 @@
 import { check } from './check.ts';
 import { type Climate, climateNightSigmaC, climateOffsetSigmaC, climateTemperatureC } from './climate.ts';
 import {
+  DAY_MS,
   type Evening,
   eveningSpan,
   eveningsBetween,
@@ -42,7 +43,6 @@ export type SeasonWeather = {
   evenings: EveningWeather[];
 };
 
-const DAY_MS = 24 * HOUR_MS;
 const SUNSET_ALTITUDE_DEG = -0.833;
 /** Missing hours in a row that still count as known once bridged. Common practice, no source. */
 const SHORT_GAP_HOURS = 3;
