@@ -1,0 +1,51 @@
+import { DAY_MS, eveningOf, eveningsBetween, type Instant, isEvening } from '../model/evening.ts';
+import type { Prop } from '../model/prop.ts';
+import type { Fault } from './refusal.ts';
+
+// Phones may run ahead, and a zone may be set wrong; more than a day is another date.
+const FURTHEST_AHEAD_MS = DAY_MS;
+const EARLIEST_AT = Date.UTC(2000, 0, 1);
+// A slip of day and month is worth asking about when it leads to a recent date.
+const RECENT_EVENINGS = 60;
+
+/**
+ * What is wrong with the moment something is said to have happened.
+ * @param at the moment
+ * @param options.now the present
+ * @param options.timeZone the site's, for the dates in the answer
+ */
+export function momentFaults(at: Instant, options: { now: Instant; timeZone: string }): Fault[] {
+  const { now, timeZone } = options;
+  if (at < EARLIEST_AT) {
+    const message = `${dateOf(at, timeZone)} is before the year 2000. Is the clock of the phone or computer set?`;
+    return [{ field: 'at', message }];
+  }
+  if (at <= now + FURTHEST_AHEAD_MS) return [];
+  const date = dateOf(at, timeZone);
+  const today = dateOf(now, timeZone);
+  const days = eveningsBetween(today, date);
+  const swapped = `${date.slice(0, 4)}-${date.slice(8)}-${date.slice(5, 7)}`;
+  const since = isEvening(swapped) ? eveningsBetween(swapped, today) : -1;
+  const guess = since >= 0 && since <= RECENT_EVENINGS ? inWords(swapped) : `today, ${inWords(today)}`;
+  const message = `This is dated ${inWords(date)}, ${days} days ahead. Was it ${guess}?`;
+  return [{ field: 'at', message }];
+}
+
+/**
+ * How many cells a prop takes: all its units together, a factory-made block counted as one.
+ * @param prop the prop
+ */
+export function cellsOf(prop: Prop): number {
+  return prop.units * prop.series * prop.parallel;
+}
+
+// Half a day on, the evening's name is the calendar date.
+function dateOf(at: Instant, timeZone: string): string {
+  return eveningOf(at + DAY_MS / 2, timeZone);
+}
+
+const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
+
+function inWords(date: string): string {
+  return `${Number(date.slice(8))} ${MONTHS[Number(date.slice(5, 7)) - 1]} ${date.slice(0, 4)}`;
+}

@@ -1,0 +1,85 @@
+import { CELL_KINDS } from '../model/cell-kinds.ts';
+import type { CellType } from '../model/cell-type.ts';
+import type { Load } from '../model/load.ts';
+import type { Prop } from '../model/prop.ts';
+import type { Switching } from '../model/switching.ts';
+import type { Fault } from './refusal.ts';
+
+// A fresh set may read a little above its curve; beyond this no set of the kind can be.
+const FRESH_MARGIN = 1.05;
+// Fresh cells of every kind read less than this share above their nominal volts.
+const FRESH_OVER_NOMINAL = 1.2;
+
+/**
+ * What cannot be true of a prop, beyond single fields. What is only unlikely passes: the forecast warns of it.
+ * @param prop the prop as it would be kept
+ * @param cellType the cells it usually has
+ */
+export function propFaults(prop: Prop, cellType: CellType): Fault[] {
+  return [...voltsFaults(prop, cellType), ...loadFaults(prop), ...switchingFaults(prop.switching)];
+}
+
+function voltsFaults(prop: Prop, cellType: CellType): Fault[] {
+  const faults: Fault[] = [];
+  const { dimVolts, stopVolts } = prop;
+  if (stopVolts !== undefined && stopVolts > dimVolts) {
+    const message = `stopVolts ${stopVolts} is above dimVolts ${dimVolts}: the light would be out before it looks dim. Were the two swapped?`;
+    faults.push({ field: 'stopVolts', message });
+  }
+  const freshVolts = freshSetVolts(prop.series, cellType);
+  if (dimVolts > freshVolts) {
+    const message = `${dimVolts} V is more than a fresh set gives: ${prop.series} × ${cellType.id} end to end is about ${freshVolts.toFixed(1)} V at most, so this would be dim from the start. Other cells, or more of them in series?`;
+    faults.push({ field: 'dimVolts', message });
+  }
+  return faults;
+}
+
+function freshSetVolts(series: number, cellType: CellType): number {
+  const byCurve = (CELL_KINDS[cellType.kind].curve.volts[0] ?? 0) * cellType.cellsInside * FRESH_MARGIN;
+  return series * Math.max(byCurve, cellType.nominalVolts * FRESH_OVER_NOMINAL);
+}
+
+function loadFaults({ load, trips }: Prop): Fault[] {
+  const faults = waveFaults(load);
+  const draws =
+    load.meanMa !== undefined || load.peakMa !== undefined || load.standbyMa > 0 || trips !== undefined;
+  if (!draws) {
+    const message =
+      "Nothing says what this takes. Give meanMa, the meter's average with the light on, or lowMa, peakMa and wave for a light that fades or blinks, or trips for one that visitors set off.";
+    faults.push({ field: 'load.meanMa', message });
+  }
+  return faults;
+}
+
+function waveFaults({ meanMa, lowMa, peakMa, wave }: Load): Fault[] {
+  const faults: Fault[] = [];
+  if (lowMa !== undefined && peakMa !== undefined && peakMa < lowMa) {
+    const message = `peakMa ${peakMa} is below lowMa ${lowMa}. Were the two swapped?`;
+    faults.push({ field: 'load.peakMa', message });
+  }
+  // With a mean the rest is detail; without one all three are needed to make it.
+  if (meanMa !== undefined || (lowMa === undefined && peakMa === undefined)) return faults;
+  const missing = Object.entries({ lowMa, peakMa, wave }).filter(([, given]) => given === undefined);
+  for (const [name] of missing) {
+    const message = `lowMa, peakMa and wave make the average together, and ${name} is missing. Give it, or give meanMa, the meter's average, instead.`;
+    faults.push({ field: `load.${name}`, message });
+  }
+  return faults;
+}
+
+function switchingFaults(switching: Switching): Fault[] {
+  if (switching.kind === 'clock' && switching.onAt === switching.offAt) {
+    const message = `On and off are both ${switching.onAt}. For a light that is never off use the kind "always"; otherwise give the time it goes off.`;
+    return [{ field: 'switching.offAt', message }];
+  }
+  if (switching.kind !== 'light-sensor') return [];
+  const faults: Fault[] = [];
+  for (const way of ['on', 'off'] as const) {
+    const lux = switching[`${way}Lux`];
+    const altitudeDeg = switching[`${way}AltitudeDeg`];
+    if (lux === undefined || altitudeDeg === undefined) continue;
+    const message = `${way}Lux ${lux} and ${way}AltitudeDeg ${altitudeDeg} say the same thing twice, and may not agree. Keep one.`;
+    faults.push({ field: `switching.${way}AltitudeDeg`, message });
+  }
+  return faults;
+}
