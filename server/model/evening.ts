@@ -1,4 +1,5 @@
 import { IANAZone } from 'luxon';
+import { dateOfDayNumber, dayNumber, dayNumberOf, digitsAt, isRealDate, padded } from './calendar-date.ts';
 import { check, checkFinite } from './check.ts';
 
 /** A moment: milliseconds since 1970-01-01T00:00:00Z, leap seconds not counted. */
@@ -16,72 +17,6 @@ const FIRST_YEAR = 1900;
 const LAST_YEAR = 2199;
 // Farthest an instant can lie from its own wall time read as UTC; real offsets stay within 15 h 14 min.
 const WIDEST_OFFSET_MS = 16 * HOUR_MS;
-
-// ---- Calendar dates as day numbers (days since 1970-01-01), without any zone ----
-
-// Source: H. Hinnant, "chrono-Compatible Low-Level Date Algorithms", days_from_civil.
-function dayNumber(year: number, month: number, day: number): number {
-  const shifted = month <= 2 ? year - 1 : year;
-  const era = Math.floor(shifted / 400);
-  const yearOfEra = shifted - era * 400;
-  const dayOfYear = Math.floor((153 * (month > 2 ? month - 3 : month + 9) + 2) / 5) + day - 1;
-  const dayOfEra = yearOfEra * 365 + Math.floor(yearOfEra / 4) - Math.floor(yearOfEra / 100) + dayOfYear;
-  return era * 146_097 + dayOfEra - 719_468;
-}
-
-// Source: as above, civil_from_days.
-function eveningOfDayNumber(days: number): Evening {
-  const shifted = days + 719_468;
-  const era = Math.floor(shifted / 146_097);
-  const dayOfEra = shifted - era * 146_097;
-  const yearOfEra = Math.floor(
-    (dayOfEra -
-      Math.floor(dayOfEra / 1460) +
-      Math.floor(dayOfEra / 36_524) -
-      Math.floor(dayOfEra / 146_096)) /
-      365,
-  );
-  const dayOfYear = dayOfEra - (365 * yearOfEra + Math.floor(yearOfEra / 4) - Math.floor(yearOfEra / 100));
-  const shiftedMonth = Math.floor((5 * dayOfYear + 2) / 153);
-  const day = dayOfYear - Math.floor((153 * shiftedMonth + 2) / 5) + 1;
-  const month = shiftedMonth < 10 ? shiftedMonth + 3 : shiftedMonth - 9;
-  const year = yearOfEra + era * 400 + (month <= 2 ? 1 : 0);
-  return `${padded(year, 4)}-${padded(month, 2)}-${padded(day, 2)}`;
-}
-
-function padded(value: number, width: number): string {
-  return String(value).padStart(width, '0');
-}
-
-function isLeap(year: number): boolean {
-  return year % 4 === 0 && (year % 100 !== 0 || year % 400 === 0);
-}
-
-const MONTH_DAYS = [31, 28, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31];
-
-function isRealDate(year: number, month: number, day: number): boolean {
-  if (month < 1 || month > 12 || day < 1) return false;
-  return day <= (month === 2 && isLeap(year) ? 29 : MONTH_DAYS[month - 1]!);
-}
-
-function digitsAt(text: string, from: number, count: number): number {
-  let value = 0;
-  for (let place = from; place < from + count; place += 1) {
-    const digit = text.charCodeAt(place) - 48;
-    if (!(digit >= 0 && digit <= 9)) return Number.NaN;
-    value = value * 10 + digit;
-  }
-  return value;
-}
-
-// NaN where the text is no real date. By character codes, since every prop asks this for every evening.
-function dayNumberOf(text: string): number {
-  if (text.length !== 10 || text.charCodeAt(4) !== 45 || text.charCodeAt(7) !== 45) return Number.NaN;
-  const year = digitsAt(text, 0, 4);
-  const month = digitsAt(text, 5, 2);
-  const day = digitsAt(text, 8, 2);
-  return isRealDate(year, month, day) ? dayNumber(year, month, day) : Number.NaN;
-}
 
 function checkedDayNumber(evening: Evening): number {
   const days = dayNumberOf(evening);
@@ -106,7 +41,7 @@ export function isEvening(text: string): boolean {
  */
 export function addEvenings(evening: Evening, count: number): Evening {
   check(Number.isInteger(count), `Evenings are counted whole, but the count is ${count}.`);
-  return eveningOfDayNumber(checkedDayNumber(evening) + count);
+  return dateOfDayNumber(checkedDayNumber(evening) + count);
 }
 
 /**
@@ -126,7 +61,7 @@ export function eveningsBetween(from: Evening, through: Evening): number {
 export function eveningsFrom(from: Evening, through: Evening): Evening[] {
   const first = checkedDayNumber(from);
   const count = Math.max(0, checkedDayNumber(through) - first + 1);
-  return Array.from({ length: count }, (_, index) => eveningOfDayNumber(first + index));
+  return Array.from({ length: count }, (_, index) => dateOfDayNumber(first + index));
 }
 
 /**
@@ -284,7 +219,7 @@ export function eveningOf(at: Instant, timeZone: string): Evening {
   // The wall clock alone misleads where a zone skipped or repeated a date.
   while (at < noonAt(days, offsets)) days -= 1;
   while (at >= noonAt(days + 1, offsets)) days += 1;
-  return eveningOfDayNumber(days);
+  return dateOfDayNumber(days);
 }
 
 // ---- Wall times ----
@@ -407,5 +342,5 @@ export function formatInstant(at: Instant): string {
   ];
   const ms = msOfDay % 1000;
   const fraction = ms === 0 ? '' : `.${padded(ms, 3)}`;
-  return `${eveningOfDayNumber(days)}T${clock.map((part) => padded(part, 2)).join(':')}${fraction}Z`;
+  return `${dateOfDayNumber(days)}T${clock.map((part) => padded(part, 2)).join(':')}${fraction}Z`;
 }
