@@ -28,7 +28,7 @@ export const whole = (minimum: number, maximum: number, options: FieldOptions = 
   Type.Integer({ minimum, maximum, ...options });
 
 export const oneOf = <const Words extends [string, ...string[]]>(words: Words, options: FieldOptions = {}) =>
-  Type.Enum(words, options);
+  Type.Unsafe<Words[number]>(Type.Enum(words, options));
 
 export const Id = Type.String({ minLength: 1, maxLength: 64, pattern: '^[A-Za-z0-9][A-Za-z0-9-]*$' });
 
