@@ -2,6 +2,7 @@ import { and, asc, eq, getTableColumns, notInArray } from 'drizzle-orm';
 import type { Evening, Instant } from '../model/evening.ts';
 import type { Db } from './open.ts';
 import { dueEvenings } from './schema.ts';
+import { StoreError } from './store-error.ts';
 
 /** What calendars were last told of an evening on which sets must be swapped. */
 export type DueEvent = {
@@ -29,7 +30,10 @@ export function listDueEvents(db: Db, siteId: string): DueEvent[] {
     .all();
 }
 
-/** Keeps these events of the site, new or changed, and drops its others; call it inside a transaction. */
+/**
+ * Keeps these events of the site, new or changed, and drops its others; call it inside a transaction.
+ * @throws StoreError when a uid belongs to another site: calendars would take one event for the other
+ */
 export function saveDueEvents(db: Db, siteId: string, events: readonly DueEvent[]): void {
   const uids = events.map((event) => event.uid);
   db.delete(dueEvenings)
@@ -37,9 +41,12 @@ export function saveDueEvents(db: Db, siteId: string, events: readonly DueEvent[
     .run();
   for (const event of events) {
     const { uid, ...content } = { ...event, siteId };
-    db.insert(dueEvenings)
+    const saved = db
+      .insert(dueEvenings)
       .values({ uid, ...content })
-      .onConflictDoUpdate({ target: dueEvenings.uid, set: content })
+      .onConflictDoUpdate({ target: dueEvenings.uid, set: content, setWhere: eq(dueEvenings.siteId, siteId) })
       .run();
+    if (saved.changes === 0)
+      throw new StoreError(`The event ${uid} belongs to another site; make its uid from the site's id.`);
   }
 }

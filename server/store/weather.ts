@@ -86,11 +86,11 @@ export function findTypicalYear(db: Db, siteId: string): (TypicalYear & { statio
 
 /**
  * Keeps a typical year in place of the one before.
- * @param year 8760 temperatures in °C; `stationName` up to 200 characters, '' when the file names none
+ * @param year 8760 temperatures in °C; the first 200 characters of `stationName` are kept
  */
 export function saveTypicalYear(db: Db, siteId: string, year: TypicalYear & { stationName: string }): void {
   const row = {
-    stationName: year.stationName,
+    stationName: year.stationName.slice(0, 200),
     standardOffsetHours: year.standardOffsetHours,
     tempC: bytesOf(year.tempC),
   };
