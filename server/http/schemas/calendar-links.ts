@@ -22,3 +22,4 @@ export const MadeCalendarLink = Type.Object({
 
 export type CalendarLink = Static<typeof CalendarLink>;
 export type MadeCalendarLink = Static<typeof MadeCalendarLink>;
+export type NewCalendarLink = Static<typeof NewCalendarLink>;

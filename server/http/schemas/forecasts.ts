@@ -99,3 +99,5 @@ export type ForecastNight = Static<typeof ForecastNight>;
 export type PropForecast = Static<typeof PropForecast>;
 export type SiteForecastProp = Static<typeof SiteForecastProp>;
 export type SiteForecast = Static<typeof SiteForecast>;
+export type ForecastQuery = Static<typeof ForecastQuery>;
+export type SiteForecastQuery = Static<typeof SiteForecastQuery>;

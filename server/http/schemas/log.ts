@@ -55,3 +55,4 @@ export type NewSighting = Static<typeof NewSighting>;
 export type Swap = Static<typeof Swap>;
 export type Sighting = Static<typeof Sighting>;
 export type LogEntry = Static<typeof LogEntry>;
+export type LogQuery = Static<typeof LogQuery>;

@@ -139,9 +139,21 @@ export const PropChanges = Type.Object(
   closed,
 );
 
+export const PropsQuery = Type.Object(
+  {
+    siteId: Type.String({ maxLength: 64, slip: 'Say which site: ?siteId=...' }),
+    limit: Type.Optional(whole(1, 10_000)),
+    after: Type.Optional(
+      Type.String({ maxLength: 64, description: 'Id of the last prop of the page before.' }),
+    ),
+  },
+  closed,
+);
+
 export type Load = Static<typeof Load>;
 export type Switching = Static<typeof Switching>;
 export type Trips = Static<typeof Trips>;
 export type Prop = Static<typeof Prop>;
 export type NewProp = Static<typeof NewProp>;
 export type PropChanges = Static<typeof PropChanges>;
+export type PropsQuery = Static<typeof PropsQuery>;

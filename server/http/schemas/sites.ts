@@ -119,6 +119,32 @@ export const TypedNight = Type.Object(
   closed,
 );
 
+/** A typed night as it is kept. */
+export const KeptTypedNight = Type.Object({
+  evening: EveningField,
+  minC: Type.Number(),
+  maxC: Type.Number(),
+});
+
+export const WeatherQuery = Type.Object(
+  {
+    unit: Type.Optional(
+      oneOf(['C', 'F'], { description: 'What the temperatures are in, when the file does not say.' }),
+    ),
+  },
+  closed,
+);
+
+export const SitesQuery = Type.Object(
+  {
+    limit: Type.Optional(whole(1, 1000)),
+    after: Type.Optional(
+      Type.String({ maxLength: 64, description: 'Id of the last site of the page before.' }),
+    ),
+  },
+  closed,
+);
+
 export const WeatherImported = Type.Object({
   format: Type.String(),
   rows: Type.Integer(),
@@ -144,3 +170,7 @@ export type ShowNight = Static<typeof ShowNight>;
 export type Night = Static<typeof Night>;
 export type TypedNight = Static<typeof TypedNight>;
 export type WeatherImported = Static<typeof WeatherImported>;
+export type ShowNights = Static<typeof ShowNights>;
+export type NightsQuery = Static<typeof NightsQuery>;
+export type WeatherQuery = Static<typeof WeatherQuery>;
+export type SitesQuery = Static<typeof SitesQuery>;

@@ -1,0 +1,81 @@
+import type { AddressInfo } from 'node:net';
+import { pathToFileURL } from 'node:url';
+import { buildApp } from './app.ts';
+import { type Clock, fixedClock, systemClock } from './clock.ts';
+import { type Config, ConfigError, readConfig } from './config.ts';
+import { openStore, type Store } from './store/open.ts';
+import { StoreError } from './store/store-error.ts';
+
+/** A running service: where it is, and how to end it. */
+export type Served = { url: string; close(): Promise<void> };
+
+/**
+ * Opens the store, listens, and says so.
+ * @param config the settings
+ * @param given a store already open, or a clock of one's own
+ * @throws ConfigError when the port is taken or the address is not this machine's; StoreError for the database
+ */
+export async function serve(config: Config, given: { store?: Store; clock?: Clock } = {}): Promise<Served> {
+  const store = given.store ?? openStore(config.db, { onProgress: say });
+  const clock = given.clock ?? (config.asOf === null ? systemClock() : fixedClock(config.asOf));
+  const app = buildApp({ store, clock, publicUrl: config.publicUrl, logLevel: 'error' });
+  const close = async () => {
+    await app.close();
+    store.close();
+  };
+  try {
+    await app.listen({ host: config.host, port: config.port });
+  } catch (error) {
+    await close();
+    throw explained(error, config);
+  }
+  const { port } = app.server.address() as AddressInfo;
+  const url = `http://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}/`;
+  say(`Duskround serves ${config.db} at ${url}`);
+  return { url, close };
+}
+
+/**
+ * Ends a service cleanly when the process is asked to end.
+ * @param served the running service
+ */
+export function closeOnSignal(served: Served): void {
+  for (const signal of ['SIGTERM', 'SIGINT'] as const)
+    process.once(signal, () => served.close().then(() => process.exit(0)));
+}
+
+function explained(error: unknown, { host, port }: Config): unknown {
+  const code = (error as NodeJS.ErrnoException).code;
+  if (code === 'EADDRINUSE')
+    return new ConfigError(
+      `Port ${port} is in use already, perhaps by another Duskround. Close that, or set DUSKROUND_PORT to another port.`,
+    );
+  if (code === 'EACCES')
+    return new ConfigError(
+      `Port ${port} may not be used by this account. Set DUSKROUND_PORT to one above 1023.`,
+    );
+  if (code === 'EADDRNOTAVAIL')
+    return new ConfigError(`${host} is no address of this machine. Set DUSKROUND_HOST to 127.0.0.1.`);
+  return error;
+}
+
+function say(text: string): void {
+  console.log(text);
+}
+
+/**
+ * Runs a program's main part; what was foreseen ends in a sentence, not in a stack.
+ * @param run the main part
+ */
+export async function runMain(run: () => Promise<void>): Promise<void> {
+  try {
+    await run();
+  } catch (error) {
+    const foreseen = error instanceof ConfigError || error instanceof StoreError;
+    console.error(foreseen ? error.message : error);
+    process.exit(1);
+  }
+}
+
+const isProgram = process.argv[1] !== undefined && import.meta.url === pathToFileURL(process.argv[1]).href;
+if (isProgram) await runMain(async () => closeOnSignal(await serve(readConfig())));
