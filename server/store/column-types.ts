@@ -46,8 +46,9 @@ export const wholeWithin = (column: AnyColumn, min: number, max: number): SQL =>
   sql`typeof(${column}) in ('integer', 'null') and ${within(column, min, max)}`;
 
 /** 1900-01-01 to 2200-01-02, epoch milliseconds: the evenings the model knows. */
-export const instant = (column: AnyColumn): SQL =>
-  wholeWithin(column, Date.UTC(1900, 0, 1), Date.UTC(2200, 0, 2));
+export const INSTANT_BOUNDS = [Date.UTC(1900, 0, 1), Date.UTC(2200, 0, 2)] as const;
+
+export const instant = (column: AnyColumn): SQL => wholeWithin(column, ...INSTANT_BOUNDS);
 
 export const flag = (column: AnyColumn): SQL => sql`${column} in (0, 1)`;
 

@@ -38,6 +38,7 @@ import {
   wholeWithin,
   within,
 } from './column-types.ts';
+import { LOAD_BOUNDS, ROUND_BOUNDS, SWITCHING_BOUNDS, TRIPS_BOUNDS } from './json-bounds.ts';
 
 const checks = (table: string, conditions: Record<string, SQL>) =>
   Object.entries(conditions).map(([name, condition]) => check(`${table}_${name}`, condition));
@@ -83,12 +84,7 @@ export const sites = sqliteTable(
         'walkMinutes',
         'cost',
       ]),
-      rounds_bounds: fieldsWithin(site.rounds, {
-        minutesFree: [0, 1440],
-        minutesPerStop: [0, 240],
-        walkMinutes: [0, 1440],
-        cost: [0, 1_000_000],
-      }),
+      rounds_bounds: fieldsWithin(site.rounds, ROUND_BOUNDS),
       zone_offsets: jsonObject(site.zoneOffsetsC),
       revision: wholeWithin(site.revision, 0, Number.MAX_SAFE_INTEGER),
       changed_at: instant(site.changedAt),
@@ -265,15 +261,7 @@ export const props = sqliteTable(
       offset: within(prop.offsetC, -15, 15),
       load: jsonObject(prop.load, ['behaviour', 'standbyMa']),
       load_words: sql`${fieldOneOf(prop.load, 'behaviour', ['steady', 'fades', 'holds'])} and ${fieldOneOf(prop.load, 'wave', ['even-fade', 'blink', 'rc-fade', 'steady'])}`,
-      load_bounds: fieldsWithin(prop.load, {
-        meanMa: [0, 20_000],
-        lowMa: [0, 20_000],
-        peakMa: [0, 20_000],
-        onShare: [0, 1],
-        standbyMa: [0, 5_000],
-        measuredVolts: [0.1, 60],
-        ledVolts: [0, 60],
-      }),
+      load_bounds: fieldsWithin(prop.load, LOAD_BOUNDS),
       switching: jsonObject(prop.switching, ['kind']),
       switching_words: fieldOneOf(prop.switching, 'kind', [
         'light-sensor',
@@ -282,22 +270,9 @@ export const props = sqliteTable(
         'by-hand',
         'always',
       ]),
-      switching_bounds: fieldsWithin(prop.switching, {
-        onLux: [0.001, 100_000],
-        onAltitudeDeg: [-18, 10],
-        offLux: [0.001, 100_000],
-        offAltitudeDeg: [-18, 10],
-        skyShare: [0.01, 1],
-        cutOffHours: [0.25, 24],
-        onHours: [0.25, 24],
-      }),
+      switching_bounds: fieldsWithin(prop.switching, SWITCHING_BOUNDS),
       trips: jsonObject(prop.trips),
-      trips_bounds: fieldsWithin(prop.trips, {
-        perShowNight: [0, 20_000],
-        perNightOff: [0, 20_000],
-        seconds: [0.1, 3_600],
-        runMa: [0.001, 20_000],
-      }),
+      trips_bounds: fieldsWithin(prop.trips, TRIPS_BOUNDS),
     }),
   ],
 );
