@@ -104,14 +104,21 @@ function plainName(name: string): string {
  * where the hour a clock change repeats is told apart by the order of the lines and the hour it skips is refused.
  * @param text the whole file; decimal commas are read where the separator is a semicolon or a tab
  * @param options.timeZone IANA name of the site; `unit` of the temperatures
- * @throws WeatherFileError for more than 600,000 rows
+ * @throws WeatherFileError for more than 600,000 rows, or a quotation mark that would swallow lines
  */
 export function readTimeTempRows(
   text: string,
   options: { header: TimeTempHeader; timeZone: string; unit: 'C' | 'F'; onProgress: (share: number) => void },
 ): TimeTempRows {
   const { header, timeZone, unit, onProgress } = options;
-  const { data } = Papa.parse<string[]>(text, { delimiter: header.delimiter });
+  const { data, errors } = Papa.parse<string[]>(text, { delimiter: header.delimiter });
+  const quote = errors.find((error) => error.type === 'Quotes');
+  if (quote) {
+    throw new WeatherFileError(
+      `Near line ${(quote.row ?? 0) + 1} a quotation mark is never closed, which would swallow the lines after it. ` +
+        'Remove it and send the file again: times and temperatures need no quotes.',
+    );
+  }
   if (data.length > MOST_ROWS) {
     throw new WeatherFileError(
       `The file has ${data.length} rows, and ${MOST_ROWS} are read at most. Likely a reading every few seconds: ` +
