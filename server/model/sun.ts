@@ -1,4 +1,5 @@
 import { check, checkFinite, checkWithin } from './check.ts';
+import { searchedCrossings } from './crossing-search.ts';
 import type { Evening, Instant } from './evening.ts';
 import { DAY_MS, eveningSpan, HOUR_MS, localNoonAt } from './evening.ts';
 import type { SunDay } from './sun-day.ts';
@@ -26,6 +27,11 @@ export type Night = {
   turnsOrigin: number;
 };
 
+// Named here once: under a bundler or test runner an imported function is looked up anew at each call, and these two are
+// called ten times a crossing.
+const sinDeclinationAt = sinDeclinationIn;
+const noonTurnsAt = noonTurnsIn;
+
 const RAD_PER_DEG = Math.PI / 180;
 const RAD_PER_TURN = 2 * Math.PI;
 const LATITUDES_DEG = { min: -90, max: 90 };
@@ -37,7 +43,6 @@ const GRAZING_SINE = 0.008;
 const POLAR_COSINE = 0.001;
 // A second of movement leaves an error of some hundredths of a second.
 const SOLVED_DAYS = 1e-5;
-const SEARCH_STEPS = 48;
 
 function checkPosition(position: Position): void {
   checkWithin(position.latitudeDeg, 'latitudeDeg', LATITUDES_DEG);
@@ -58,8 +63,8 @@ export function sunAltitudeDeg(at: Instant, position: Position): number {
   const day = Math.floor(at / DAY_MS);
   const days = at / DAY_MS - day;
   const sunDay = sunDayOf(day);
-  const hourTurns = days + position.longitudeDeg / 360 + noonTurnsIn(sunDay, days) - 0.5;
-  const sinDeclination = sinDeclinationIn(sunDay, days);
+  const hourTurns = days + position.longitudeDeg / 360 + noonTurnsAt(sunDay, days) - 0.5;
+  const sinDeclination = sinDeclinationAt(sunDay, days);
   const latitudeRad = position.latitudeDeg * RAD_PER_DEG;
   const sinAltitude =
     Math.sin(latitudeRad) * sinDeclination +
@@ -69,11 +74,9 @@ export function sunAltitudeDeg(at: Instant, position: Position): number {
   return Math.asin(Math.max(-1, Math.min(1, sinAltitude))) / RAD_PER_DEG;
 }
 
-// Count of solar noons at this longitude up to the one nearest to an instant.
+// Number of the solar noon nearest to an instant by the mean sun, which the true sun never leaves by more than 17 min.
 function nearestNoon(at: Instant, longitudeDeg: number): number {
-  const day = Math.floor(at / DAY_MS);
-  const days = at / DAY_MS - day;
-  return Math.round(day + days + longitudeDeg / 360 + noonTurnsIn(sunDayOf(day), days) - 0.5);
+  return Math.round(at / DAY_MS + longitudeDeg / 360 - 0.5);
 }
 
 function nightAfterNoon(noon: number, position: Position): Night {
@@ -81,8 +84,8 @@ function nightAfterNoon(noon: number, position: Position): Night {
   const day = Math.floor(midnight);
   const sunDay = sunDayOf(day);
   const turnsOrigin = noon + 0.5 - position.longitudeDeg / 360 - day;
-  const startDays = turnsOrigin - noonTurnsIn(sunDay, turnsOrigin);
-  const endDays = turnsOrigin + 1 - noonTurnsIn(sunDay, turnsOrigin + 1);
+  const startDays = turnsOrigin - noonTurnsAt(sunDay, turnsOrigin);
+  const endDays = turnsOrigin + 1 - noonTurnsAt(sunDay, turnsOrigin + 1);
   const latitudeRad = position.latitudeDeg * RAD_PER_DEG;
   return {
     startAt: Math.round((day + startDays) * DAY_MS),
@@ -150,8 +153,8 @@ export function nightsDuring(evening: Evening, place: Place): Night[] {
 }
 
 function sinAltitudeIn(night: Night, days: number): number {
-  const sinDeclination = sinDeclinationIn(night.sunDay, days);
-  const hourTurns = days - night.turnsOrigin + noonTurnsIn(night.sunDay, days);
+  const sinDeclination = sinDeclinationAt(night.sunDay, days);
+  const hourTurns = days - night.turnsOrigin + noonTurnsAt(night.sunDay, days);
   return (
     night.sinLatitude * sinDeclination +
     night.cosLatitude * Math.sqrt(1 - sinDeclination * sinDeclination) * Math.cos(hourTurns * RAD_PER_TURN)
@@ -164,7 +167,7 @@ function instantIn(night: Night, days: number): Instant {
 
 // Turns from the nearer noon at which the sun stands at an altitude, were its declination that of `days`.
 function hourTurnsAt(night: Night, days: number, sinAltitude: number): number {
-  const sinDeclination = sinDeclinationIn(night.sunDay, days);
+  const sinDeclination = sinDeclinationAt(night.sunDay, days);
   const swing = night.cosLatitude * Math.sqrt(1 - sinDeclination * sinDeclination);
   return Math.acos((sinAltitude - night.sinLatitude * sinDeclination) / swing) / RAD_PER_TURN;
 }
@@ -177,7 +180,7 @@ function solvedDays(night: Night, sinAltitude: number, guess: { days: number; si
   let days = guess.days;
   for (let movedDays = 1; movedDays > SOLVED_DAYS; ) {
     const hourTurns = guess.side * hourTurnsAt(night, days, sinAltitude);
-    const nextDays = noonDays + hourTurns - noonTurnsIn(night.sunDay, days);
+    const nextDays = noonDays + hourTurns - noonTurnsAt(night.sunDay, days);
     movedDays = Math.abs(nextDays - days);
     days = nextDays;
   }
@@ -188,92 +191,43 @@ function solvedDays(night: Night, sinAltitude: number, guess: { days: number; si
 function solvedSpell(night: Night, sinAltitude: number): DarkSpell {
   const { turnsOrigin, sunDay, sinLatitude, cosLatitude } = night;
   const midnightDays = turnsOrigin + 0.5;
-  const sinDeclination = sinDeclinationIn(sunDay, midnightDays);
+  const sinDeclination = sinDeclinationAt(sunDay, midnightDays);
   const cosDeclination = Math.sqrt(1 - sinDeclination * sinDeclination);
   const cosHour = (sinAltitude - sinLatitude * sinDeclination) / (cosLatitude * cosDeclination);
   const hourTurns = Math.acos(cosHour) / RAD_PER_TURN;
   const slopeTurns =
     (sinLatitude / cosLatitude - (cosHour * sinDeclination) / cosDeclination) /
     (cosDeclination * Math.sqrt(1 - cosHour * cosHour) * RAD_PER_TURN);
-  const noonTurns = noonTurnsIn(sunDay, midnightDays);
+  const noonTurns = noonTurnsAt(sunDay, midnightDays);
   const duskDays = turnsOrigin + hourTurns - noonTurns;
   const dawnDays = turnsOrigin + 1 - hourTurns - noonTurns;
-  const laterTurns = slopeTurns * (sinDeclinationIn(sunDay, duskDays) - sinDeclination);
-  const earlierTurns = slopeTurns * (sinDeclinationIn(sunDay, dawnDays) - sinDeclination);
+  const laterTurns = slopeTurns * (sinDeclinationAt(sunDay, duskDays) - sinDeclination);
+  const earlierTurns = slopeTurns * (sinDeclinationAt(sunDay, dawnDays) - sinDeclination);
   const dusk = solvedDays(night, sinAltitude, {
-    days: duskDays + laterTurns + noonTurns - noonTurnsIn(sunDay, duskDays),
+    days: duskDays + laterTurns + noonTurns - noonTurnsAt(sunDay, duskDays),
     side: 1,
   });
   const dawn = solvedDays(night, sinAltitude, {
-    days: dawnDays - earlierTurns + noonTurns - noonTurnsIn(sunDay, dawnDays),
+    days: dawnDays - earlierTurns + noonTurns - noonTurnsAt(sunDay, dawnDays),
     side: -1,
   });
   return { state: 'normal', duskAt: instantIn(night, dusk), dawnAt: instantIn(night, dawn) };
 }
 
-// Where within a stretch the sun is lowest (sense -1) or highest (sense 1); thirds are enough, it is done seldom.
-function extremeDays(night: Night, stretch: { from: number; until: number }, sense: 1 | -1): number {
-  let { from, until } = stretch;
-  for (let round = 0; round < 40; round += 1) {
-    const third = (until - from) / 3;
-    const early = sense * sinAltitudeIn(night, from + third);
-    const late = sense * sinAltitudeIn(night, until - third);
-    if (early < late) from += third;
-    else until -= third;
-  }
-  return (from + until) / 2;
-}
-
-// Samples of the night, thickened by the turning points between them, so that a brief dip is not stepped over.
-function samplesOf(night: Night): number[] {
-  const startDays = night.startAt / DAY_MS - night.day;
-  const endDays = night.endAt / DAY_MS - night.day;
-  const step = (endDays - startDays) / SEARCH_STEPS;
-  const days = Array.from({ length: SEARCH_STEPS + 1 }, (_, index) => startDays + index * step);
-  const heights = days.map((each) => sinAltitudeIn(night, each));
-  const turning: number[] = [];
-  for (let index = 0; index <= SEARCH_STEPS; index += 1) {
-    const before = heights[index - 1] ?? heights[index]!;
-    const after = heights[index + 1] ?? heights[index]!;
-    const stretch = {
-      from: Math.max(startDays, days[index]! - step),
-      until: Math.min(endDays, days[index]! + step),
-    };
-    if (heights[index]! <= before && heights[index]! <= after) turning.push(extremeDays(night, stretch, -1));
-    if (heights[index]! >= before && heights[index]! >= after) turning.push(extremeDays(night, stretch, 1));
-  }
-  return [...days, ...turning].sort((a, b) => a - b);
-}
-
-function crossingDays(night: Night, stretch: { from: number; until: number }, sinAltitude: number): number {
-  let { from, until } = stretch;
-  const startsBelow = sinAltitudeIn(night, from) < sinAltitude;
-  for (let round = 0; round < 32; round += 1) {
-    const middle = (from + until) / 2;
-    if (sinAltitudeIn(night, middle) < sinAltitude === startsBelow) from = middle;
-    else until = middle;
-  }
-  return (from + until) / 2;
-}
-
 function searchedSpell(night: Night, sinAltitude: number): DarkSpell {
-  const days = samplesOf(night);
-  const below = days.map((each) => sinAltitudeIn(night, each) < sinAltitude);
-  let firstDown: number | null = null;
-  let lastUp: number | null = null;
-  for (let index = 1; index < days.length; index += 1) {
-    if (below[index] === below[index - 1]) continue;
-    const stretch = { from: days[index - 1]!, until: days[index]! };
-    if (!below[index]) lastUp = crossingDays(night, stretch, sinAltitude);
-    else firstDown ??= crossingDays(night, stretch, sinAltitude);
-  }
-  // Light only in the middle happens next to a pole alone; what counts is that it ends dark.
-  if (firstDown !== null && lastUp !== null && lastUp < firstDown) lastUp = null;
+  const course = {
+    from: night.startAt / DAY_MS - night.day,
+    until: night.endAt / DAY_MS - night.day,
+    heightAt: (days: number) => sinAltitudeIn(night, days),
+  };
+  const { firstDown, lastUp, startsBelow } = searchedCrossings(course, sinAltitude);
   const duskAt = firstDown === null ? null : instantIn(night, firstDown);
-  const dawnAt = lastUp === null ? null : instantIn(night, lastUp);
+  // Light only in the middle happens next to a pole alone; what counts is that it ends dark.
+  const endsDark = firstDown !== null && lastUp !== null && lastUp < firstDown;
+  const dawnAt = lastUp === null || endsDark ? null : instantIn(night, lastUp);
   if (duskAt !== null) return { state: dawnAt === null ? 'dusk-only' : 'normal', duskAt, dawnAt };
   if (dawnAt !== null) return { state: 'dawn-only', duskAt, dawnAt };
-  return { state: below[0] ? 'never-light' : 'never-dark', duskAt, dawnAt };
+  return { state: startsBelow ? 'never-light' : 'never-dark', duskAt, dawnAt };
 }
 
 /**
@@ -290,7 +244,7 @@ export function darkSpellIn(night: Night, altitudeDeg: number): DarkSpell {
   if (altitudeDeg >= 90) return { state: 'never-light', duskAt: null, dawnAt: null };
   if (altitudeDeg <= -90) return { state: 'never-dark', duskAt: null, dawnAt: null };
   const sinAltitude = Math.sin(altitudeDeg * RAD_PER_DEG);
-  const sinDeclination = sinDeclinationIn(night.sunDay, night.turnsOrigin + 0.5);
+  const sinDeclination = sinDeclinationAt(night.sunDay, night.turnsOrigin + 0.5);
   const middle = night.sinLatitude * sinDeclination;
   const swing = night.cosLatitude * Math.sqrt(1 - sinDeclination * sinDeclination);
   if (sinAltitude < middle - swing - GRAZING_SINE) return { state: 'never-dark', duskAt: null, dawnAt: null };
