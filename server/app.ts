@@ -13,6 +13,7 @@ import { servePages } from './http/pages.ts';
 import { limitRates } from './http/rate-limit.ts';
 import { calendarLinkRoutes } from './http/routes/calendar-links.ts';
 import { cellTypeRoutes } from './http/routes/cell-types.ts';
+import { forecastRoutes } from './http/routes/forecasts.ts';
 import { healthRoutes } from './http/routes/health.ts';
 import { logRoutes } from './http/routes/log.ts';
 import { nightRoutes } from './http/routes/nights.ts';
@@ -68,6 +69,7 @@ export function buildApp(options: AppOptions): FastifyInstance {
     cellTypeRoutes(routes, deps);
     propRoutes(routes, deps);
     logRoutes(routes, deps);
+    forecastRoutes(routes, deps, version);
     calendarLinkRoutes(routes, deps, publicUrl);
   });
   app.register(async (routes) => weatherRoutes(routes, deps));

@@ -7,7 +7,7 @@ import { siteOf } from './find-site.ts';
  * A site's props by tag, A-2 before A-10.
  * @param deps what a deed needs
  * @param input.limit at most so many
- * @param input.after tag of the last prop of the page before
+ * @param input.after id of the last prop of the page before
  * @throws Refusal 'not-found' for the site
  */
 export function listProps(deps: Deps, input: { siteId: string; limit: number; after?: string }): Prop[] {

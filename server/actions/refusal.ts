@@ -11,10 +11,18 @@ export class Refusal extends Error {
   readonly faults: Fault[];
 
   constructor(code: RefusalCode, reason: string | Fault[]) {
-    super(typeof reason === 'string' ? reason : reason.map((fault) => fault.message).join(' '));
+    super(typeof reason === 'string' ? reason : summary(reason));
     this.code = code;
     this.faults = typeof reason === 'string' ? [] : reason;
   }
+}
+
+function summary(faults: Fault[]): string {
+  const [first, ...others] = faults;
+  if (!first) return '';
+  if (others.length === 0) return first.message;
+  const rest = others.length === 1 ? 'another field needs' : `${others.length} other fields need`;
+  return `${first.message} And ${rest} a look: see errors.`;
 }
 
 /** What a deed says of an id nobody has; the same words for ids that never were and ids that are gone. */

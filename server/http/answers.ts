@@ -1,8 +1,13 @@
 import type { Night as NightValue } from '../actions/list-nights.ts';
 import { formatInstant, type Instant } from '../model/evening.ts';
+import type {
+  PropForecast as PropForecastValue,
+  SiteForecast as SiteForecastValue,
+} from '../model/forecast.ts';
 import type { LogEntry as EntryValue } from '../model/log-entry.ts';
 import type { Prop as PropValue } from '../model/prop.ts';
 import type { CalendarLink } from './schemas/calendar-links.ts';
+import type { PropForecast, SiteForecast } from './schemas/forecasts.ts';
 import type { LogEntry } from './schemas/log.ts';
 import type { Prop, Switching } from './schemas/props.ts';
 import type { Night } from './schemas/sites.ts';
@@ -29,6 +34,14 @@ export function nightAnswer(night: NightValue): Night {
     duskAt: text(night.duskAt),
     dawnAt: text(night.dawnAt),
   };
+}
+
+export function propForecastAnswer(forecast: PropForecastValue): PropForecast {
+  return { ...forecast, asOf: formatInstant(forecast.asOf), fittedAt: text(forecast.fittedAt) };
+}
+
+export function siteForecastAnswer(forecast: SiteForecastValue): SiteForecast {
+  return { ...forecast, asOf: formatInstant(forecast.asOf) };
 }
 
 export function entryAnswer(entry: EntryValue, hints: string[] = []): LogEntry {

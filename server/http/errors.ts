@@ -2,6 +2,7 @@ import type { Socket } from 'node:net';
 import type { FastifyError, FastifyInstance, FastifyReply, FastifyRequest } from 'fastify';
 import { wantsPage } from './pages.ts';
 import { HttpProblem, PROBLEM_TYPE, PROBLEMS, problemBody, problemOf } from './problems.ts';
+import { SECURITY_HEADERS } from './security-headers.ts';
 
 /**
  * Sends a no.
@@ -70,6 +71,7 @@ export function answerFrameworkError(
   _request: FastifyRequest,
   reply: FastifyReply,
 ): void {
+  reply.headers(SECURITY_HEADERS);
   sendProblem(reply, problemOf(error));
 }
 

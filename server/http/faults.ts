@@ -8,6 +8,7 @@ export const MOST_FAULTS = 100;
 /** The parts of a JSON schema that sentences are made of. */
 type Node = {
   slip?: string;
+  description?: string;
   type?: string;
   format?: string;
   enum?: readonly unknown[];
@@ -55,7 +56,7 @@ function sentences(error: TLocalizedValidationError, context: Context): Fault[] 
     case 'required':
       return error.params.requiredProperties.map((name) => ({
         field: under(name),
-        message: `${name} is missing.${slipOf(node.properties?.[name])}`,
+        message: `${name} is missing.${hintOf(node.properties?.[name])}`,
       }));
     case 'additionalProperties':
       return error.params.additionalProperties.map((name) => ({
@@ -197,8 +198,9 @@ function fieldOf(instancePath: string): string {
   return steps(instancePath).map(shortened).join('.');
 }
 
-function slipOf(node: Node | undefined): string {
-  return node?.slip ? ` ${node.slip}` : '';
+function hintOf(node: Node | undefined): string {
+  const hint = node?.slip ?? node?.description;
+  return hint ? ` ${hint}` : '';
 }
 
 function isObject(value: unknown): value is Record<string, unknown> {

@@ -16,6 +16,13 @@ export function limitRates(app: FastifyInstance, perMinute: number): void {
   });
   app.register(rateLimit, {
     global: false,
+    // Only Retry-After is a settled name; how much is left is nobody's business.
+    addHeaders: { 'x-ratelimit-limit': false, 'x-ratelimit-remaining': false, 'x-ratelimit-reset': false },
+    addHeadersOnExceeding: {
+      'x-ratelimit-limit': false,
+      'x-ratelimit-remaining': false,
+      'x-ratelimit-reset': false,
+    },
     errorResponseBuilder: (_request, { ttl }) =>
       new HttpProblem(
         'too-many',

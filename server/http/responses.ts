@@ -40,4 +40,5 @@ export const writeAnswers = <Own extends Record<number, unknown>>(own: Own): Own
   ...own,
 });
 
+export const NotModified = Type.Null({ description: 'What the asker has is still right.' });
 export const NoContent = Type.Null({ description: 'Done; there is nothing to say.' });

@@ -1,6 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 
-const HEADERS = {
+export const SECURITY_HEADERS = {
   'content-security-policy':
     "default-src 'self'; frame-ancestors 'none'; base-uri 'none'; form-action 'self'; object-src 'none'",
   'x-content-type-options': 'nosniff',
@@ -16,7 +16,7 @@ const HEADERS = {
  */
 export function addSecurityHeaders(app: FastifyInstance): void {
   app.addHook('onSend', async (_request, reply) => {
-    reply.headers(HEADERS);
+    reply.headers(SECURITY_HEADERS);
     // What the API says is about this moment; routes that know better have said so already.
     if (!reply.hasHeader('cache-control')) reply.header('cache-control', 'no-store');
   });
