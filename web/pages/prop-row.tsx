@@ -1,0 +1,50 @@
+import type { SiteForecastProp } from '../api/types.ts';
+import { sign } from '../drawing/sign.ts';
+import { wick } from '../drawing/wick.ts';
+import { wickOfProp, wickWords } from '../drawing/wick-of-prop.ts';
+import { Link } from '../parts/link.tsx';
+import { GROUP_WORDS, IMPORTANCE_WORDS } from '../words/names.ts';
+import { dimWords, swapByWords } from '../words/range.ts';
+
+type PropRowProps = {
+  prop: SiteForecastProp;
+  tonight: string;
+  nextRound: string | null;
+  /** With its sign, where the heading above does not already say the group. */
+  withSign?: boolean;
+};
+
+/** One prop in a list: what it is, how its wick stands, and by when. */
+export function PropRow({ prop, tonight, nextRound, withSign = false }: PropRowProps) {
+  const isKnown = prop.group !== 'unknown';
+  return (
+    <li class="row">
+      <Link path={`/props/${prop.propId}`} class="row-link">
+        <span class="row-name-line">
+          <span class="tag">{prop.tag}</span>
+          <span class="row-title">{prop.name}</span>
+          {prop.importance === 'must-not-fail' && (
+            <span class="badge">{IMPORTANCE_WORDS[prop.importance]}</span>
+          )}
+        </span>
+        <span class="row-wick">
+          {wick(wickOfProp(prop, { tonight, nextRound }), { width: 150, label: wickWords(prop, tonight) })}
+        </span>
+        <span class="row-when">
+          {withSign && (
+            <span class="row-group">
+              {sign(prop.group)}
+              <span class="row-group-word">{GROUP_WORDS[prop.group].short}</span>
+            </span>
+          )}
+          {isKnown && <span class="row-dim">{dimWords(prop.dim, tonight)}</span>}
+          {prop.swapBy !== null && <span class="row-swap">{swapByWords(prop.swapBy, tonight)}</span>}
+          {prop.lastSeen && prop.lastSeen !== 'bright' && (
+            <span class="row-seen">last seen {prop.lastSeen}</span>
+          )}
+        </span>
+        {prop.note && <span class="row-note">{prop.note}</span>}
+      </Link>
+    </li>
+  );
+}
