@@ -1,4 +1,5 @@
 import type { CellKind, CellType } from './cell-type.ts';
+import { peukertHours } from './peukert.ts';
 
 /** Share of the label capacity a cell gives at 20 °C by current through it, mA ascending. */
 export type RateTable = { ma: readonly number[]; share: readonly number[] };
@@ -20,19 +21,33 @@ const lithiumRate = (capacityMah: number): RateTable => ({
   ma: [capacityMah / 10, capacityMah / 5, capacityMah / 2, capacityMah],
   share: [1, 0.99, 0.97, 0.93],
 });
-/**
- * Sealed lead by Peukert's law between the rows of a maker's constant-current table (12 V 14 Ah: 0.69 A for 20 h,
- * 1.30 A for 10 h, 2.28 A for 5 h, 7.84 A for 1 h), as shares of the 20 h capacity. Slower than 20 h the gain is
- * capped at 8 % (engineering estimate).
- */
-const leadRate = (capacityMah: number): RateTable => {
-  const twentyHourMa = capacityMah / 20;
-  const slowest = twentyHourMa * 1.08 ** (-1 / 0.094);
-  return {
-    ma: [slowest, twentyHourMa, twentyHourMa * 1.884, twentyHourMa * 3.304, twentyHourMa * 11.362],
-    share: [1.08, 1, 0.942, 0.826, 0.568],
-  };
-};
+/** A maker's constant-current table of a 12 V 14 Ah block: hours, A. The 2.3 Ah block's has the same exponents. */
+const LEAD_TABLE = [
+  { hours: 20, amperes: 0.69 },
+  { hours: 10, amperes: 1.3 },
+  { hours: 5, amperes: 2.28 },
+  { hours: 1, amperes: 7.84 },
+];
+/** Exponent between the 20 h and the 10 h row, carried on to slower discharges; the gain is capped there (estimate). */
+const LEAD_SLOW_EXPONENT = 1.094;
+const LEAD_SLOW_GAIN = 1.08;
+
+/** Sealed lead as shares of the 20 h capacity: the maker's rows, and Peukert's law below the 20 h current. */
+function leadRate(twentyHourMah: number): RateTable {
+  const ratedMa = twentyHourMah / 20;
+  const slow = [0.4, 0.55, 0.75].map((part) => {
+    const ma = ratedMa * part;
+    const hours = peukertHours({ ratedMah: twentyHourMah, ratedHours: 20, ma, exponent: LEAD_SLOW_EXPONENT });
+    return { ma, share: Math.min(LEAD_SLOW_GAIN, (ma * hours) / twentyHourMah) };
+  });
+  const ratedAmperes = LEAD_TABLE[0]!.amperes;
+  const rows = LEAD_TABLE.map(({ hours, amperes }) => ({
+    ma: (ratedMa * amperes) / ratedAmperes,
+    share: (hours * amperes) / (20 * ratedAmperes),
+  }));
+  const all = [...slow, ...rows];
+  return { ma: all.map((row) => row.ma), share: all.map((row) => row.share) };
+}
 
 const ROWS: Row[] = [
   [

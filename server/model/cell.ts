@@ -107,8 +107,11 @@ export function usableShares(set: CellSet, demand: Demand, volts: number): Usabl
   const row = coldRow(set, demand.rateMa > 0 ? capacityMah / demand.rateMa : Number.MAX_VALUE);
   const cellVolts = volts / (set.series * set.type.cellsInside);
   const sagAt20C = (demand.peakMa / capacityMah) * polarisation.ohmAh;
-  const cutOffAt = (sagVolts: number) =>
-    usedShareAtVolts(set, cellVolts + sagVolts) / usedShareAtVolts(set, cutOffVolts + sagVolts);
+  const cutOffAt = (sagVolts: number) => {
+    const whole = usedShareAtVolts(set, cutOffVolts + sagVolts);
+    // A sag that lifts even the label's cut-off above a fresh cell leaves nothing to use.
+    return whole > 0 ? usedShareAtVolts(set, cellVolts + sagVolts) / whole : 0;
+  };
   const cutOffShare = cutOffAt(0);
   const coldShareAt = (tempC: number) => {
     const cold = interpolate(COLD_GRID_C, row, tempC);

@@ -36,7 +36,7 @@ export type Depletion = {
   /** Drain factor below which it is bright, and lit, through the whole evening; Infinity where it is not lit at all. */
   brightBelow: Float64Array;
   litBelow: Float64Array;
-  /** Share of the evening's lit charge after which it goes dim, by the likely course; 1 = bright to the end. */
+  /** Share of the evening's lit time after which it goes dim, by the likely course; 1 = bright to the end. */
   brightShare: Float64Array;
   /** What the likely course does: an index into COURSE_WORDS. */
   likely: Uint8Array;
@@ -65,7 +65,7 @@ const LIKELY = 12;
  * moment when x <= X_dim(T). Where x reaches X_dark(T) it is dark and takes nothing, so x stands still until a milder
  * moment lifts the limit: recovery needs no rule of its own. x never falls as the drain factor rises, so for each
  * evening there is one factor below which it stays bright throughout: the threshold. Between the followed factors it
- * is interpolated on the margin X - x, which is exact as long as the prop has not been dark before.
+ * is found along the slope of the margin X - x, which is exact as long as the prop has not been dark before.
  *
  * Ours; the model is that of an hour-by-hour sum, against which it is checked (test/bench). Moments looked at are
  * those of the schedule, at most four hours apart.
@@ -88,6 +88,7 @@ export function deplete(set: SetCourse): Depletion {
     dimByCold: new Uint8Array(count),
   };
   const state = new Float64Array(FACTORS.length).fill(set.drawDown.reckonedOf(set.usedAtStartMah));
+  const slope = new Float64Array(FACTORS.length);
   for (let n = 0; n < count; n += 1) {
     const schedule = n === 0 ? set.firstEvening : set.schedule;
     const i = n === 0 ? 0 : set.start + n;
@@ -100,7 +101,7 @@ export function deplete(set: SetCourse): Depletion {
       set.selfDischargeMah(n, nightC);
     const drawShare = set.drawDown.drawShareAt(likelyMah);
     const eveningMah = litMah + otherMah / drawShare;
-    followEvening({ set, schedule, i, n, limits, state, out, eveningMah, litMah });
+    followEvening({ set, schedule, i, n, limits, state, slope, out, eveningMah, litMah });
     out.litHours[n] = schedule.litHours[i]!;
     out.eveningMah[n] = litMah * drawShare + otherMah;
     out.usedMah[n] = set.drawDown.usedOf(state[LIKELY]!);
@@ -114,81 +115,116 @@ type EveningWork = {
   i: number;
   n: number;
   limits: LimitTables;
+  /** Reckoned charge by factor, and how fast it rises with the factor. */
   state: Float64Array;
+  slope: Float64Array;
   out: Depletion;
   eveningMah: number;
   litMah: number;
 };
 
-/** Smallest margin to the limit seen this evening, by factor; reused, since nothing keeps it. */
-const brightMargin = new Float64Array(FACTORS.length);
-const litMargin = new Float64Array(FACTORS.length);
+/** The tightest look of an evening, by factor: the margin left and how fast it falls with the factor. */
+type Tightest = { margin: Float64Array; slope: Float64Array };
+const tightest = (): Tightest => ({
+  margin: new Float64Array(FACTORS.length),
+  slope: new Float64Array(FACTORS.length),
+});
+/** Reused from evening to evening, since nothing keeps them. */
+const toDim = tightest();
+const toDark = tightest();
+
+function keepTightest(kept: Tightest, g: number, look: { margin: number; slope: number }): void {
+  if (look.margin >= kept.margin[g]!) return;
+  kept.margin[g] = look.margin;
+  kept.slope[g] = look.slope;
+}
 
 function followEvening(work: EveningWork): void {
-  const { set, schedule, i, n, limits, state, out } = work;
+  const { set, schedule, i, n, limits, state, slope, out } = work;
   const firstCheck = schedule.checkFrom[i]!;
   const endCheck = schedule.checkFrom[i + 1]!;
   const otherMah = work.eveningMah - work.litMah;
-  brightMargin.fill(Infinity);
-  litMargin.fill(Infinity);
-  let doneMah = 0;
-  let tightest = Infinity;
-  let dimAtMah = Infinity;
-  let beforeMargin = Infinity;
+  toDim.margin.fill(Infinity);
+  toDark.margin.fill(Infinity);
   out.decidingC[n] = schedule.nightC[i]! + set.offsetC;
+  let doneMah = 0;
+  let least = Infinity;
+  let before = Infinity;
   for (let c = firstCheck; c < endCheck; c += 1) {
     const airC = schedule.checkAirC[c]! + set.offsetC;
     const dimLimit = limits.at(limits.dim, airC);
     const darkLimit = limits.at(limits.dark, airC);
     const byNowMah = set.meanMa * schedule.checkLitHours[c]! + otherMah * schedule.checkGoneShare[c]!;
     const stepMah = byNowMah - doneMah;
+    const margin = dimLimit - state[LIKELY]! - stepMah;
     for (let g = 0; g < FACTORS.length; g += 1) {
-      const before = state[g]!;
-      const reached = before + FACTORS[g]! * stepMah;
-      if (dimLimit - reached < brightMargin[g]!) brightMargin[g] = dimLimit - reached;
-      if (darkLimit - reached < litMargin[g]!) litMargin[g] = darkLimit - reached;
-      state[g] = Math.max(before, Math.min(reached, darkLimit));
+      const reached = state[g]! + FACTORS[g]! * stepMah;
+      const rise = slope[g]! + stepMah;
+      keepTightest(toDim, g, { margin: dimLimit - reached, slope: rise });
+      keepTightest(toDark, g, { margin: darkLimit - reached, slope: rise });
+      if (reached <= darkLimit) {
+        state[g] = reached;
+        slope[g] = rise;
+      } else if (state[g]! < darkLimit) {
+        state[g] = darkLimit;
+        slope[g] = 0;
+      }
     }
-    const margin = dimLimit - state[LIKELY]!;
-    if (margin < tightest) {
-      tightest = margin;
+    if (margin < least) {
+      least = margin;
       out.decidingC[n] = airC;
     }
-    if (margin < 0 && dimAtMah === Infinity) {
-      const share = beforeMargin === Infinity ? 0 : beforeMargin / (beforeMargin - margin);
-      dimAtMah = doneMah + stepMah * share;
+    if (margin < 0 && out.brightShare[n] === 1) {
+      out.brightShare[n] = brightShareAt(schedule, { c, firstCheck, endCheck, before, margin });
     }
-    beforeMargin = margin;
+    before = margin;
     doneMah = byNowMah;
   }
   const restMah = work.eveningMah - doneMah;
   for (let g = 0; g < FACTORS.length; g += 1) {
-    if (litMargin[g]! >= 0) state[g] = state[g]! + FACTORS[g]! * restMah;
+    if (toDark.margin[g]! < 0) continue;
+    state[g] = state[g]! + FACTORS[g]! * restMah;
+    slope[g] = slope[g]! + restMah;
   }
-  out.brightBelow[n] = thresholdOf(brightMargin);
-  out.litBelow[n] = thresholdOf(litMargin);
-  if (dimAtMah < Infinity) out.brightShare[n] = work.eveningMah > 0 ? dimAtMah / work.eveningMah : 0;
-  const cold = out.decidingC[n]! < MILD_C;
-  const sparedMah = work.eveningMah;
-  const isDim = tightest < 0;
-  const isDark = litMargin[LIKELY]! < 0;
-  const atMah = limits.at(limits.dim, out.decidingC[n]!) - tightest;
-  out.dimByCold[n] = isDim && cold && atMah + sparedMah <= limits.at(limits.dim, MILD_C) ? 1 : 0;
-  const darkByCold = cold && state[LIKELY]! + sparedMah <= limits.at(limits.dark, MILD_C);
+  out.brightBelow[n] = thresholdOf(toDim);
+  out.litBelow[n] = thresholdOf(toDark);
   if (endCheck === firstCheck) out.likely[n] = NOT_LIT;
-  else if (isDark) out.likely[n] = darkByCold ? DARK_COLD : DARK_USED_UP;
-  else out.likely[n] = isDim ? DIM : BRIGHT;
+  else tellLikely(work, least);
 }
 
-/** Factor at which a margin that falls with the factor crosses zero: linear between the followed ones, and beyond them. */
-function thresholdOf(margin: Float64Array): number {
+/** Share of the evening's looks that had passed when the margin ran out between look c - 1 and look c. */
+function brightShareAt(
+  schedule: Schedule,
+  at: { c: number; firstCheck: number; endCheck: number; before: number; margin: number },
+): number {
+  if (at.before === Infinity) return 0;
+  const part = at.before / (at.before - at.margin);
+  const whole = schedule.checkLitHours[at.endCheck - 1]!;
+  if (whole === 0) return (at.c - 1 - at.firstCheck + part) / (at.endCheck - 1 - at.firstCheck);
+  const from = schedule.checkLitHours[at.c - 1]!;
+  return (from + (schedule.checkLitHours[at.c]! - from) * part) / whole;
+}
+
+function tellLikely({ limits, state, out, n, eveningMah }: EveningWork, least: number): void {
+  const cold = out.decidingC[n]! < MILD_C;
+  const atMah = limits.at(limits.dim, out.decidingC[n]!) - least;
+  out.dimByCold[n] = least < 0 && cold && atMah + eveningMah <= limits.at(limits.dim, MILD_C) ? 1 : 0;
+  const darkByCold = cold && state[LIKELY]! + eveningMah <= limits.at(limits.dark, MILD_C);
+  if (toDark.margin[LIKELY]! < 0) out.likely[n] = darkByCold ? DARK_COLD : DARK_USED_UP;
+  else out.likely[n] = least < 0 ? DIM : BRIGHT;
+}
+
+/**
+ * Factor at which the margin runs out: from the highest followed factor that still has one, along its slope. Exact
+ * as long as a prop between that factor and the threshold has been dark on the same evenings.
+ */
+function thresholdOf({ margin, slope }: Tightest): number {
   const last = FACTORS.length - 1;
   if (margin[0] === Infinity) return Infinity;
   let g = 0;
-  while (g < last - 1 && margin[g + 1]! >= 0) g += 1;
-  const fall = margin[g]! - margin[g + 1]!;
-  if (fall <= 0) return margin[g]! >= 0 ? Infinity : 0;
-  return Math.max(0, FACTORS[g]! + ((FACTORS[g + 1]! - FACTORS[g]!) * margin[g]!) / fall);
+  while (g < last && margin[g + 1]! >= 0) g += 1;
+  if (slope[g]! <= 0) return margin[g]! >= 0 ? Infinity : 0;
+  return Math.max(0, FACTORS[g]! + margin[g]! / slope[g]!);
 }
 
 type LimitTables = { dim: Float64Array; dark: Float64Array; at(table: Float64Array, tempC: number): number };

@@ -86,9 +86,10 @@ type ZoneOffsets = {
   unchangedMs: number;
 };
 
-// One question to Intl costs thousands of nanoseconds, so each zone is asked once a day of a stretch, and the few
-// changes found are kept.
-const STRETCH_DAYS = 400;
+// One question to Intl costs thousands of nanoseconds, so each zone is asked for a stretch at once, and the few changes
+// found are kept.
+const ASKED_EVERY_DAYS = 5;
+const STRETCH_DAYS = 80 * ASKED_EVERY_DAYS;
 const STRETCH_MS = STRETCH_DAYS * DAY_MS;
 const MOST_ZONES_KEPT = 1000;
 const zonesKept = new Map<string, ZoneOffsets>();
@@ -125,24 +126,33 @@ function askedOffsetMs(zone: IANAZone, at: Instant): number {
   return Math.round(zone.offset(at) * 60) * 1000;
 }
 
-// Two changes within one UTC day that undo each other would be missed; the database holds none.
+// The instant, to the second, of the first change between two instants that differ in offset.
+function changeBetween(zone: IANAZone, { fromAt, untilAt }: { fromAt: Instant; untilAt: Instant }): Instant {
+  const offsetMs = askedOffsetMs(zone, fromAt);
+  let [beforeAt, changedAt] = [fromAt, untilAt];
+  while (changedAt - beforeAt > 1000) {
+    const middleAt = beforeAt + Math.floor((changedAt - beforeAt) / 2000) * 1000;
+    if (askedOffsetMs(zone, middleAt) === offsetMs) beforeAt = middleAt;
+    else changedAt = middleAt;
+  }
+  return changedAt;
+}
+
+// Looks every few days, and day by day where those differ. A change undone between two looks would be missed; the
+// database has none since 1900 that lasts less than ASKED_EVERY_DAYS.
 function changesInStretch(zone: IANAZone, stretch: number): OffsetChange[] {
   const startAt = stretch * STRETCH_MS;
-  let offsetMs = askedOffsetMs(zone, startAt);
-  const changes: OffsetChange[] = [{ fromAt: startAt, offsetMs }];
-  for (let day = 1; day <= STRETCH_DAYS; day += 1) {
-    const nextMs = askedOffsetMs(zone, startAt + day * DAY_MS);
-    if (nextMs === offsetMs) continue;
-    let beforeAt = startAt + (day - 1) * DAY_MS;
-    let fromAt = startAt + day * DAY_MS;
-    while (fromAt - beforeAt > 1000) {
-      const middleAt = beforeAt + Math.floor((fromAt - beforeAt) / 2000) * 1000;
-      if (askedOffsetMs(zone, middleAt) === offsetMs) beforeAt = middleAt;
-      else fromAt = middleAt;
+  const changes: OffsetChange[] = [{ fromAt: startAt, offsetMs: askedOffsetMs(zone, startAt) }];
+  const look = (fromAt: Instant, untilAt: Instant, stepMs: number): void => {
+    for (let at = fromAt; at < untilAt; at += stepMs) {
+      const nextMs = askedOffsetMs(zone, at + stepMs);
+      if (nextMs === changes.at(-1)!.offsetMs) continue;
+      if (stepMs > DAY_MS) look(at, at + stepMs, DAY_MS);
+      else
+        changes.push({ fromAt: changeBetween(zone, { fromAt: at, untilAt: at + stepMs }), offsetMs: nextMs });
     }
-    offsetMs = nextMs;
-    changes.push({ fromAt, offsetMs });
-  }
+  };
+  look(startAt, startAt + STRETCH_MS, ASKED_EVERY_DAYS * DAY_MS);
   return changes;
 }
 

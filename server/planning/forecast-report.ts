@@ -91,7 +91,7 @@ export function swapByFor(projection: PropProjection, wanted: Wanted): Evening |
 export function propForecast(asked: Asked, outcome: PropProjection | NotProjected): PropForecast {
   const { prop, asOf, wanted } = asked;
   if (!isProjected(outcome)) return withoutProjection(asked, outcome);
-  const { depletion, dimShares } = outcome;
+  const { dimShares } = outcome;
   const today = todayIn(outcome, wanted.today);
   const usedMah = usedMahAt(outcome, asked);
   const tonightMah = usableMahOn(outcome, today);

@@ -1,7 +1,13 @@
 import { CELL_KINDS, COLD_GRID_C } from '../../server/model/cell-kinds.ts';
 import type { CellType } from '../../server/model/cell-type.ts';
 import { rateTableOf } from '../../server/model/cell-types-built-in.ts';
-import { type Evening, eveningSpan, eveningsFrom, HOUR_MS, type Instant } from '../../server/model/evening.ts';
+import {
+  type Evening,
+  eveningSpan,
+  eveningsFrom,
+  HOUR_MS,
+  type Instant,
+} from '../../server/model/evening.ts';
 import type { Prop } from '../../server/model/prop.ts';
 
 /**
@@ -86,7 +92,8 @@ function currentMa(q: PlainQuestion, usedMah: number, wholeMah: number): number 
   const { curve } = CELL_KINDS[type.kind];
   const volts = table(curve.used, curve.volts, usedMah / wholeMah) * prop.series * type.cellsInside;
   const { behaviour, measuredVolts = 0, ledVolts = 0 } = prop.load;
-  if (behaviour === 'fades') return q.meanMa * Math.max(0.02, (volts - ledVolts) / (measuredVolts - ledVolts));
+  if (behaviour === 'fades')
+    return q.meanMa * Math.max(0.02, (volts - ledVolts) / (measuredVolts - ledVolts));
   if (behaviour === 'holds') return (q.meanMa * measuredVolts) / volts;
   return q.meanMa;
 }
@@ -110,7 +117,12 @@ export function stepHourByHour(q: PlainQuestion): PlainAnswer {
     ) *
     (1 - WEAKEST[q.prop.series - 1]! * CELL_KINDS[q.type.kind].unitSd);
   let usedMah = 0;
-  const answer: PlainAnswer = { dimAfterNights: null, darkAfterNights: null, usedMah: 0, litShareByEvening: [] };
+  const answer: PlainAnswer = {
+    dimAfterNights: null,
+    darkAfterNights: null,
+    usedMah: 0,
+    litShareByEvening: [],
+  };
   const offsetC = q.prop.offsetC ?? 0;
   eveningsFrom(q.firstEvening, q.through).forEach((evening, night) => {
     const span = eveningSpan(evening, q.timeZone);
@@ -133,7 +145,9 @@ export function stepHourByHour(q: PlainQuestion): PlainAnswer {
       const darkLimit = usableMahPlainly(q, q.stopVolts, tempC);
       const wholeHours = (span.endAt - Math.max(span.startAt, q.fittedAt)) / HOUR_MS;
       let takenMah = (tripMah * hours) / wholeHours + selfDischargeMah(q, from, hours, tempC);
-      takenMah += lit ? currentMa(q, usedMah, wholeMah) * hours : q.standbyMa * hours;
+      // The current in the middle of the step: that at its start would be a little high for a fading light.
+      const halfwayMah = usedMah + (lit ? currentMa(q, usedMah, wholeMah) * hours * q.factor : 0) / 2;
+      takenMah += lit ? currentMa(q, halfwayMah, wholeMah) * hours : q.standbyMa * hours;
       takenMah *= q.factor;
       if (lit) {
         const share = takenMah > 0 ? (dimLimit - usedMah) / takenMah : 1;

@@ -129,16 +129,16 @@ describe('a climate from a typical year', () => {
     expect(climateTemperatureC(climate, at('2026-12-31T23:30'))).toBeCloseTo(11.5, 5);
   });
 
-  test('spreads one hour of one day over the 15 days around it, round the year end too', () => {
-    // 15 K in one of 15 days are 1 K in their mean.
+  test('spreads one hour of one day over the 45 days around it, round the year end too', () => {
+    // 45 K in one of 45 days are 1 K in their mean.
     const climate = climateOfTypicalYear(
-      year((day, hour) => (day === 0 && hour === 5 ? 15 : 0)),
+      year((day, hour) => (day === 0 && hour === 5 ? 45 : 0)),
       position,
     );
-    for (const date of ['2026-12-25', '2026-12-31', '2027-01-01', '2027-01-08']) {
+    for (const date of ['2026-12-10', '2026-12-31', '2027-01-01', '2027-01-23']) {
       expect(climateTemperatureC(climate, at(`${date}T05:00`))).toBeCloseTo(1, 5);
     }
-    for (const date of ['2026-12-24', '2027-01-09']) {
+    for (const date of ['2026-12-09', '2027-01-24']) {
       expect(climateTemperatureC(climate, at(`${date}T05:00`))).toBeCloseTo(0, 5);
     }
     expect(climateTemperatureC(climate, at('2027-01-01T06:00'))).toBeCloseTo(0, 5);
@@ -155,12 +155,12 @@ describe('a climate from a typical year', () => {
     expect(hour('2027-03-01')).toBeCloseTo(59, 4);
   });
 
-  test('leaves a missing hour to the days around it, and refuses one missing for 15 days', () => {
+  test('leaves a missing hour to the days around it, and refuses one missing for 45 days', () => {
     const holed = year((_, hour) => hour);
     holed.tempC[100 * 24 + 5] = Number.NaN;
     const climate = climateOfTypicalYear(holed, position);
     expect(climateTemperatureC(climate, at('2026-04-11T05:00'))).toBeCloseTo(5, 5);
-    for (let day = 100; day < 115; day++) holed.tempC[day * 24 + 5] = Number.NaN;
+    for (let day = 100; day < 145; day++) holed.tempC[day * 24 + 5] = Number.NaN;
     expect(() => climateOfTypicalYear(holed, position)).toThrow(/hour 5 is missing/);
   });
 
