@@ -1,5 +1,8 @@
 import swagger from '@fastify/swagger';
-import type { FastifyInstance } from 'fastify';
+import type { FastifyInstance, FastifySchema } from 'fastify';
+import { Type } from 'typebox';
+import { isWrite } from './guards.ts';
+import { PROBLEMS } from './problems.ts';
 import { CalendarLink } from './schemas/calendar-links.ts';
 import { CellType } from './schemas/cell-types.ts';
 import { Problem } from './schemas/errors.ts';
@@ -9,6 +12,8 @@ import { Prop } from './schemas/props.ts';
 import { Site } from './schemas/sites.ts';
 
 const SHARED = [CalendarLink, CellType, Problem, Prop, PropForecast, Sighting, Site, SiteForecast, Swap];
+const READ_PROBLEMS = [400, 404, 405, 414, 421, 500];
+const WRITE_PROBLEMS = [400, 403, 404, 405, 409, 413, 414, 415, 421, 422, 429, 500];
 
 /**
  * Describes the API from the schemas its routes are checked with.
@@ -28,10 +33,31 @@ export function describeApi(app: FastifyInstance, version: string): void {
           'Which battery-lit props go dim before somebody can reach them, and by when each must be swapped.',
       },
     },
+    transform: ({ schema, url, route }) => {
+      const isWriting = [route.method].flat().some(isWrite);
+      return { schema: withProblems(schema ?? {}, isWriting ? WRITE_PROBLEMS : READ_PROBLEMS), url };
+    },
     refResolver: {
       buildLocalReference: (json, _baseUri, _fragment, index) =>
         typeof json.$id === 'string' ? json.$id : `schema-${index}`,
     },
   });
   app.get('/api/openapi.json', { schema: { hide: true } }, async () => app.swagger());
+}
+
+/** Every route can say no in the same ways. They are added here, since a serializer each would make starting slow. */
+function withProblems(schema: FastifySchema, statuses: readonly number[]): FastifySchema {
+  const problems = statuses.map((status) => [
+    status,
+    {
+      description: titlesOf(status),
+      content: { 'application/problem+json': { schema: Type.Ref('Problem') } },
+    },
+  ]);
+  return { ...schema, response: { ...(schema.response as object), ...Object.fromEntries(problems) } };
+}
+
+function titlesOf(status: number): string {
+  const rows = Object.values(PROBLEMS).filter((row) => row.status === status);
+  return rows.map((row) => row.title).join('; or: ');
 }

@@ -1,6 +1,7 @@
+import type { Response } from 'supertest';
 import { describe, expect, test } from 'vitest';
 import { A_SITE, aProp, aSiteWithProp } from '../rig/a-site.ts';
-import { aRig } from '../rig/build-app.ts';
+import { aRig, dumpOf } from '../rig/build-app.ts';
 
 describe('sites', () => {
   test('are made, read, changed and removed', async () => {
@@ -33,7 +34,7 @@ describe('sites', () => {
     const names: string[] = [];
     let next: string | undefined = '/api/sites?limit=1';
     while (next) {
-      const page = await ask.get(next).expect(200);
+      const page: Response = await ask.get(next).expect(200);
       names.push(...page.body.map((site: { name: string }) => site.name));
       next = /<([^>]+)>; rel="next"/.exec(page.headers.link ?? '')?.[1];
     }
@@ -269,7 +270,6 @@ describe('calendar links', () => {
         lastReadAt: null,
       },
     ]);
-    const { dumpOf } = await import('../rig/build-app.ts');
     expect(dumpOf(rig.store)).not.toContain(secret);
     await rig.ask.delete(`${links}/${made.body.id}`).expect(204);
     expect((await rig.ask.get(links).expect(200)).body).toEqual([]);

@@ -1,10 +1,11 @@
 import type { FastifyInstance } from 'fastify';
 import request from 'supertest';
-import { onTestFinished } from 'vitest';
+import { expect, onTestFinished } from 'vitest';
 import { type AppOptions, buildApp } from '../../server/app.ts';
 import { settableClock } from '../../server/clock.ts';
 import type { Instant } from '../../server/model/evening.ts';
 import { openStore, type Store } from '../../server/store/open.ts';
+import { type ApiDocument, listenIn, undocumented } from './as-documented.ts';
 
 /** Thursday, three weeks into the season of `aSite`. */
 export const NOW = Date.UTC(2026, 9, 22, 9);
@@ -18,15 +19,21 @@ export type Rig = {
 };
 
 /**
- * A whole app of its own: a database in memory and a clock to set. It ends with the test.
+ * A whole app of its own: a database in memory and a clock to set. It ends with the test, which fails if any answer
+ * was not as the API describes it.
  * @param options what is not as usual; `at` is what the clock shows first
  */
 export async function aRig(options: Partial<AppOptions> & { at?: Instant } = {}): Promise<Rig> {
   const { at, store = openStore(':memory:'), ...rest } = options;
   const clock = settableClock(at ?? NOW);
   const app = buildApp({ store, clock, writesPerMinute: 1_000_000, ...rest });
+  const sent = listenIn(app);
   await app.ready();
   onTestFinished(async () => {
+    const document = app.swagger() as unknown as ApiDocument;
+    expect(sent.map((answer) => undocumented(document, answer)).filter((fault) => fault !== null)).toEqual(
+      [],
+    );
     await app.close();
     store.close();
   });

@@ -5,7 +5,7 @@ import { listCalendarLinks } from '../../actions/list-calendar-links.ts';
 import { makeCalendarLink } from '../../actions/make-calendar-link.ts';
 import { removeCalendarLink } from '../../actions/remove-calendar-link.ts';
 import { linkAnswer } from '../answers.ts';
-import { NoContent, readAnswers, ref, writeAnswers } from '../responses.ts';
+import { NoContent, ref } from '../responses.ts';
 import { CalendarLink, MadeCalendarLink, NewCalendarLink } from '../schemas/calendar-links.ts';
 
 type OfSite = { Params: { siteId: string } };
@@ -22,7 +22,7 @@ export function calendarLinkRoutes(app: FastifyInstance, deps: Deps, publicUrl: 
         operationId: 'makeCalendarLink',
         summary: 'Make a secret calendar address; it is told this once',
         body: NewCalendarLink,
-        response: writeAnswers({ 201: MadeCalendarLink }),
+        response: { 201: MadeCalendarLink },
       },
     },
     async (request, reply) => {
@@ -41,7 +41,7 @@ export function calendarLinkRoutes(app: FastifyInstance, deps: Deps, publicUrl: 
       schema: {
         operationId: 'listCalendarLinks',
         summary: 'Calendar links, without their secrets',
-        response: readAnswers({ 200: Type.Array(ref(CalendarLink)) }),
+        response: { 200: Type.Array(ref(CalendarLink)) },
       },
     },
     async (request) => listCalendarLinks(deps, request.params).map(linkAnswer),
@@ -53,7 +53,7 @@ export function calendarLinkRoutes(app: FastifyInstance, deps: Deps, publicUrl: 
       schema: {
         operationId: 'removeCalendarLink',
         summary: 'Revoke a calendar link',
-        response: writeAnswers({ 204: NoContent }),
+        response: { 204: NoContent },
       },
     },
     async (request, reply) => {

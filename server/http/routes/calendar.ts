@@ -3,7 +3,7 @@ import type { FastifyInstance } from 'fastify';
 import { Type } from 'typebox';
 import { hasAlready } from '../not-modified.ts';
 import { HttpProblem } from '../problems.ts';
-import { NotModified, readAnswers } from '../responses.ts';
+import { NotModified } from '../responses.ts';
 
 /** Reads the calendar that a secret opens; null for a secret nobody has, or has any more. */
 export type CalendarReader = (secret: string) => { text: string } | null;
@@ -20,10 +20,10 @@ export function calendarRoutes(app: FastifyInstance, read: CalendarReader): void
       schema: {
         operationId: 'readCalendar',
         summary: 'The calendar feed (RFC 5545) of a link',
-        response: readAnswers({
+        response: {
           200: { description: 'An iCalendar file', content: { 'text/calendar': { schema: Type.String() } } },
           304: NotModified,
-        }),
+        },
       },
     },
     async (request, reply) => {

@@ -5,7 +5,7 @@ import { changeCellType } from '../../actions/change-cell-type.ts';
 import type { Deps } from '../../actions/deps.ts';
 import { listCellTypes } from '../../actions/list-cell-types.ts';
 import { removeCellType } from '../../actions/remove-cell-type.ts';
-import { NoContent, readAnswers, ref, writeAnswers } from '../responses.ts';
+import { NoContent, ref } from '../responses.ts';
 import { CellType, CellTypeChanges, NewCellType } from '../schemas/cell-types.ts';
 
 type OfCellType = { Params: { cellTypeId: string } };
@@ -17,7 +17,7 @@ export function cellTypeRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'listCellTypes',
         summary: 'Your own cell types, then the built-in ones',
-        response: readAnswers({ 200: Type.Array(ref(CellType)) }),
+        response: { 200: Type.Array(ref(CellType)) },
       },
     },
     async () => listCellTypes(deps),
@@ -30,7 +30,7 @@ export function cellTypeRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'addCellType',
         summary: 'Add a cell type of your own',
         body: NewCellType,
-        response: writeAnswers({ 201: ref(CellType) }),
+        response: { 201: ref(CellType) },
       },
     },
     async (request, reply) => {
@@ -46,7 +46,7 @@ export function cellTypeRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'changeCellType',
         summary: 'Replace the given fields of a cell type of your own',
         body: CellTypeChanges,
-        response: writeAnswers({ 200: ref(CellType) }),
+        response: { 200: ref(CellType) },
       },
     },
     async (request) => changeCellType(deps, { ...request.params, changes: request.body }),
@@ -58,7 +58,7 @@ export function cellTypeRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'removeCellType',
         summary: 'Remove a cell type of your own that nothing names',
-        response: writeAnswers({ 204: NoContent }),
+        response: { 204: NoContent },
       },
     },
     async (request, reply) => {

@@ -6,7 +6,7 @@ import { propForecastAnswer, siteForecastAnswer } from '../answers.ts';
 import { asOfIn } from '../bodies.ts';
 import { keptBodies } from '../kept-bodies.ts';
 import { hasAlready } from '../not-modified.ts';
-import { NotModified, readAnswers, ref } from '../responses.ts';
+import { NotModified, ref } from '../responses.ts';
 import { ForecastQuery, PropForecast, SiteForecast, SiteForecastQuery } from '../schemas/forecasts.ts';
 
 const MOST_KEPT = 32;
@@ -24,7 +24,7 @@ export function forecastRoutes(app: FastifyInstance, deps: Deps, version: string
         operationId: 'forecastSite',
         summary: 'Every prop of a site: which go dim before the next round',
         querystring: SiteForecastQuery,
-        response: readAnswers({ 200: ref(SiteForecast), 304: NotModified }),
+        response: { 200: ref(SiteForecast), 304: NotModified },
       },
     },
     async (request, reply) => {
@@ -48,7 +48,7 @@ export function forecastRoutes(app: FastifyInstance, deps: Deps, version: string
         operationId: 'forecastProp',
         summary: 'One prop: when it goes dim and dark, by when to swap it, and the sum behind that',
         querystring: ForecastQuery,
-        response: readAnswers({ 200: ref(PropForecast) }),
+        response: { 200: ref(PropForecast) },
       },
     },
     async (request) => {

@@ -1,7 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import type { Deps } from '../../actions/deps.ts';
 import { formatInstant } from '../../model/evening.ts';
-import { readAnswers } from '../responses.ts';
 import { Health } from '../schemas/health.ts';
 
 export function healthRoutes(app: FastifyInstance, deps: Deps, version: string): void {
@@ -11,7 +10,7 @@ export function healthRoutes(app: FastifyInstance, deps: Deps, version: string):
       schema: {
         operationId: 'getHealth',
         summary: 'Whether the service runs',
-        response: readAnswers({ 200: Health }),
+        response: { 200: Health },
       },
     },
     async (): Promise<Health> => ({

@@ -12,7 +12,7 @@ import { entryAnswer } from '../answers.ts';
 import { instantOf } from '../bodies.ts';
 import { HttpProblem } from '../problems.ts';
 import { ReplayHeaders, replayOf, sendOnce } from '../replay.ts';
-import { readAnswers, ref, writeAnswers } from '../responses.ts';
+import { ref } from '../responses.ts';
 import { LogQuery, NewSighting, NewSwap, Sighting, Swap } from '../schemas/log.ts';
 
 type OfProp = { Params: { propId: string } };
@@ -35,7 +35,7 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
         summary: 'Cells were changed',
         headers: ReplayHeaders,
         body: NewSwap,
-        response: writeAnswers({ 201: ref(Swap) }),
+        response: { 201: ref(Swap) },
       },
     },
     async (request, reply) => {
@@ -57,7 +57,7 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
         summary: 'Somebody saw the prop',
         headers: ReplayHeaders,
         body: NewSighting,
-        response: writeAnswers({ 201: ref(Sighting) }),
+        response: { 201: ref(Sighting) },
       },
     },
     async (request, reply) => {
@@ -81,7 +81,7 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'listLog',
         summary: 'Swaps and sightings, newest first',
         querystring: LogQuery,
-        response: readAnswers({ 200: LogPage }),
+        response: { 200: LogPage },
       },
     },
     async (request) => {
@@ -101,7 +101,7 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'getEntry',
         summary: 'One swap or sighting',
-        response: readAnswers({ 200: AnyEntry }),
+        response: { 200: AnyEntry },
       },
     },
     async (request) => entryAnswer(entryOf(deps.store.db, request.params)),
@@ -113,7 +113,7 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'undoEntry',
         summary: 'Take a swap or sighting back; it stays in the log, marked',
-        response: writeAnswers({ 200: AnyEntry }),
+        response: { 200: AnyEntry },
       },
     },
     async (request) => entryAnswer(undoEntry(deps, request.params)),

@@ -6,7 +6,6 @@ import { listShowNights } from '../../actions/list-show-nights.ts';
 import { setShowNights } from '../../actions/set-show-nights.ts';
 import { nightAnswer } from '../answers.ts';
 import { asOfIn } from '../bodies.ts';
-import { readAnswers, writeAnswers } from '../responses.ts';
 import { Night, NightsQuery, ShowNights } from '../schemas/sites.ts';
 
 type OfSite = { Params: { siteId: string } };
@@ -19,7 +18,7 @@ export function nightRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'listNights',
         summary: 'Sun, visitors and weather of each evening of the season, or of another run of at most 400',
         querystring: NightsQuery,
-        response: readAnswers({ 200: Type.Array(Night) }),
+        response: { 200: Type.Array(Night) },
       },
     },
     async (request) => {
@@ -34,7 +33,7 @@ export function nightRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'listShowNights',
         summary: 'The show nights as they stand',
-        response: readAnswers({ 200: ShowNights }),
+        response: { 200: ShowNights },
       },
     },
     async (request) => listShowNights(deps, request.params),
@@ -47,7 +46,7 @@ export function nightRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'setShowNights',
         summary: 'Replace the list of show nights',
         body: ShowNights,
-        response: writeAnswers({ 200: ShowNights }),
+        response: { 200: ShowNights },
       },
     },
     async (request) => setShowNights(deps, { ...request.params, nights: request.body }),

@@ -9,7 +9,7 @@ import { removeProp } from '../../actions/remove-prop.ts';
 import { propAnswer } from '../answers.ts';
 import { newPropOf, propChangesOf } from '../bodies.ts';
 import { pageOf } from '../paging.ts';
-import { NoContent, readAnswers, ref, writeAnswers } from '../responses.ts';
+import { NoContent, ref } from '../responses.ts';
 import { NewProp, Prop, PropChanges, PropsQuery } from '../schemas/props.ts';
 
 type OfProp = { Params: { propId: string } };
@@ -24,7 +24,7 @@ export function propRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'addProp',
         summary: 'Add a prop to a site',
         body: NewProp,
-        response: writeAnswers({ 201: ref(Prop) }),
+        response: { 201: ref(Prop) },
       },
     },
     async (request, reply) => {
@@ -40,7 +40,7 @@ export function propRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'listProps',
         summary: 'The props of a site by tag; a Link header names the next page',
         querystring: PropsQuery,
-        response: readAnswers({ 200: Type.Array(ref(Prop)) }),
+        response: { 200: Type.Array(ref(Prop)) },
       },
     },
     async (request, reply) => {
@@ -52,7 +52,7 @@ export function propRoutes(app: FastifyInstance, deps: Deps): void {
 
   app.get<OfProp>(
     '/api/props/:propId',
-    { schema: { operationId: 'getProp', summary: 'One prop', response: readAnswers({ 200: ref(Prop) }) } },
+    { schema: { operationId: 'getProp', summary: 'One prop', response: { 200: ref(Prop) } } },
     async (request) => propAnswer(propOf(deps.store.db, request.params.propId)),
   );
 
@@ -63,7 +63,7 @@ export function propRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'changeProp',
         summary: 'Replace the given fields of a prop; null takes an optional one away',
         body: PropChanges,
-        response: writeAnswers({ 200: ref(Prop) }),
+        response: { 200: ref(Prop) },
       },
     },
     async (request) =>
@@ -76,7 +76,7 @@ export function propRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'removeProp',
         summary: 'Remove a prop with its log',
-        response: writeAnswers({ 204: NoContent }),
+        response: { 204: NoContent },
       },
     },
     async (request, reply) => {

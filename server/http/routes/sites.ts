@@ -7,7 +7,7 @@ import { siteOf } from '../../actions/find-site.ts';
 import { listSites } from '../../actions/list-sites.ts';
 import { removeSite } from '../../actions/remove-site.ts';
 import { pageOf } from '../paging.ts';
-import { NoContent, readAnswers, ref, writeAnswers } from '../responses.ts';
+import { NoContent, ref } from '../responses.ts';
 import { NewSite, Site, SiteChanges, SitesQuery } from '../schemas/sites.ts';
 
 type OfSite = { Params: { siteId: string } };
@@ -20,7 +20,7 @@ export function siteRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'createSite',
         summary: 'Make a site',
         body: NewSite,
-        response: writeAnswers({ 201: ref(Site) }),
+        response: { 201: ref(Site) },
       },
     },
     async (request, reply) => {
@@ -36,7 +36,7 @@ export function siteRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'listSites',
         summary: 'Sites by name; a Link header names the next page',
         querystring: SitesQuery,
-        response: readAnswers({ 200: Type.Array(ref(Site)) }),
+        response: { 200: Type.Array(ref(Site)) },
       },
     },
     async (request, reply) => {
@@ -47,7 +47,7 @@ export function siteRoutes(app: FastifyInstance, deps: Deps): void {
 
   app.get<OfSite>(
     '/api/sites/:siteId',
-    { schema: { operationId: 'getSite', summary: 'One site', response: readAnswers({ 200: ref(Site) }) } },
+    { schema: { operationId: 'getSite', summary: 'One site', response: { 200: ref(Site) } } },
     async (request) => siteOf(deps.store.db, request.params.siteId),
   );
 
@@ -58,7 +58,7 @@ export function siteRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'changeSite',
         summary: 'Replace the given fields of a site',
         body: SiteChanges,
-        response: writeAnswers({ 200: ref(Site) }),
+        response: { 200: ref(Site) },
       },
     },
     async (request) => changeSite(deps, { siteId: request.params.siteId, changes: request.body }),
@@ -70,7 +70,7 @@ export function siteRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'removeSite',
         summary: 'Remove a site with everything on it',
-        response: writeAnswers({ 204: NoContent }),
+        response: { 204: NoContent },
       },
     },
     async (request, reply) => {

@@ -4,7 +4,7 @@ import type { Deps } from '../../actions/deps.ts';
 import { importWeather } from '../../actions/import-weather.ts';
 import { typeNight, untypeNight } from '../../actions/type-night.ts';
 import { HttpProblem } from '../problems.ts';
-import { NoContent, writeAnswers } from '../responses.ts';
+import { NoContent } from '../responses.ts';
 import { KeptTypedNight, TypedNight, WeatherImported, WeatherQuery } from '../schemas/sites.ts';
 
 type OfSite = { Params: { siteId: string } };
@@ -33,7 +33,7 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
           'Take a weather file in: a typical year (EPW) or a CSV of time and temperature, as text/csv or a form upload',
         consumes: ['text/csv', FORM],
         querystring: WeatherQuery,
-        response: writeAnswers({ 200: WeatherImported }),
+        response: { 200: WeatherImported },
       },
     },
     async (request) => {
@@ -49,7 +49,7 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'typeNight',
         summary: 'The low and high of a night, typed by hand; beats any file',
         body: TypedNight,
-        response: writeAnswers({ 200: KeptTypedNight }),
+        response: { 200: KeptTypedNight },
       },
     },
     async (request) => typeNight(deps, { ...request.params, night: request.body }),
@@ -61,7 +61,7 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
       schema: {
         operationId: 'untypeNight',
         summary: 'Forget what was typed for a night',
-        response: writeAnswers({ 204: NoContent }),
+        response: { 204: NoContent },
       },
     },
     async (request, reply) => {
