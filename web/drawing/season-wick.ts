@@ -120,7 +120,7 @@ function wickRow(nights: SeasonNight[], x: EveningScale): Drawing {
     });
   const dark = [...boxesOf('dark-used-up'), ...boxesOf('dark-cold')];
   return group('season-wick', [
-    ...boxesOf('dim').flatMap((box) => [path('wick-dim', hatching(box, 6)), rect('wick-dim-edge', box)]),
+    ...boxesOf('dim').map((box) => path('wick-dim', hatching(box, 6))),
     path(
       'wick-open',
       dark

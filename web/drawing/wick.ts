@@ -1,4 +1,4 @@
-import { type Drawing, draw, hatching, path, picture, rect, round } from './svg.ts';
+import { type Drawing, draw, hatching, path, picture, round } from './svg.ts';
 
 /**
  * A set as a wick. Its whole length is the time a full set would stay bright here; what is lit of it is the share
@@ -19,7 +19,7 @@ export type WickValues = {
 
 export const STRANDS = 5;
 const STRAND_HEIGHT = 2;
-const STRAND_GAP = 0.8;
+const STRAND_GAP = 1.4;
 /** Room for a full set and the dim tail behind it. */
 const WHOLE = 1.2;
 const PAD = 4;
@@ -99,7 +99,6 @@ export function wick(values: WickValues, options: { width: number; label: string
       `M${round(x(hatchedThrough))} ${PAD}H${round(x(WHOLE))}M${round(x(hatchedThrough))} ${edge}H${round(x(WHOLE))}`,
     ),
     hatchedThrough > hatchedFrom ? path('wick-dim', hatching(box(hatchedFrom, hatchedThrough))) : null,
-    hatchedThrough > hatchedFrom ? rect('wick-dim-edge', box(hatchedFrom, hatchedThrough)) : null,
     draw('g', { class: values.coldOut ? 'wick-cold' : 'wick-lit' }, strands),
     path('wick-root', `M${round(x(0))} ${PAD - 2}V${edge + 2}`),
     roundShare !== null && roundShare <= WHOLE ? path('wick-knot', knotAt(x(roundShare), height)) : null,

@@ -10,7 +10,7 @@ import { cautionsFor, REMINDER } from '../words/cautions.ts';
 import { drawWords, entryWords, IMPORTANCE_WORDS, switchingWords } from '../words/names.ts';
 import { wiringWords } from '../words/quantity.ts';
 import { dimWords, rangeWords, swapByWords } from '../words/range.ts';
-import { eveningOf, shortMomentWords } from '../words/time.ts';
+import { nightMeant, shortMomentWords } from '../words/time.ts';
 import { PropSeason } from './prop-season.tsx';
 import { PropSum } from './prop-sum.tsx';
 import { SightingButtons } from './sighting-buttons.tsx';
@@ -33,7 +33,7 @@ export function PropPage({ propId }: { propId: string }) {
     if (prop.problem) return <Trouble problem={prop.problem} onAgain={() => void prop.again()} />;
     return <Waiting what="the prop" />;
   }
-  const tonight = eveningOf(momentAt, site.timeZone);
+  const tonight = nightMeant(momentAt, site.timeZone);
   const cellType = cellTypes.value?.find(
     ({ id }) => id === (forecast.value?.cellTypeId ?? prop.value!.cellTypeId),
   );
@@ -58,20 +58,7 @@ export function PropPage({ propId }: { propId: string }) {
       {forecast.problem && <Trouble problem={forecast.problem} onAgain={() => void forecast.again()} />}
       {!forecast.value && !forecast.problem && <Waiting what="the forecast" />}
       <div class="prop-columns">
-        <div class="prop-main">
-          {forecast.value && <PropAnswer forecast={forecast.value} tonight={tonight} />}
-          {forecast.value && (
-            <PropSeason
-              forecast={forecast.value}
-              entries={log.value?.entries ?? []}
-              timeZone={site.timeZone}
-              tonight={tonight}
-            />
-          )}
-          {forecast.value && (
-            <PropSum forecast={forecast.value} prop={prop.value} tonight={tonight} timeZone={site.timeZone} />
-          )}
-        </div>
+        {forecast.value && <PropAnswer forecast={forecast.value} tonight={tonight} />}
         <div class="prop-side">
           <SightingButtons prop={prop.value} onDone={afterDeed} />
           <SwapForm
@@ -83,6 +70,17 @@ export function PropPage({ propId }: { propId: string }) {
           {cellType && <KindCautions cellType={cellType} prop={prop.value} />}
           <LogList entries={log.value?.entries ?? []} site={site} onUndo={(id) => void undo(id)} />
         </div>
+        {forecast.value && (
+          <div class="prop-main">
+            <PropSeason
+              forecast={forecast.value}
+              entries={log.value?.entries ?? []}
+              timeZone={site.timeZone}
+              tonight={tonight}
+            />
+            <PropSum forecast={forecast.value} prop={prop.value} tonight={tonight} timeZone={site.timeZone} />
+          </div>
+        )}
       </div>
     </article>
   );

@@ -14,6 +14,26 @@ type PropRowProps = {
   withSign?: boolean;
 };
 
+/** How a wick is read, once per page. */
+export function WickKey() {
+  return (
+    <ul class="key" aria-label="How to read a wick">
+      <li>
+        <span class="key-swatch key-strands" /> left of a full set
+      </li>
+      <li>
+        <span class="key-swatch key-hatched" /> will look dim
+      </li>
+      <li>
+        <span class="key-swatch key-open" /> dark
+      </li>
+      <li>
+        <span class="key-knot" /> next round
+      </li>
+    </ul>
+  );
+}
+
 /** One prop in a list: what it is, how its wick stands, and by when. */
 export function PropRow({ prop, tonight, nextRound, withSign = false }: PropRowProps) {
   const isKnown = prop.group !== 'unknown';
@@ -28,7 +48,7 @@ export function PropRow({ prop, tonight, nextRound, withSign = false }: PropRowP
           )}
         </span>
         <span class="row-wick">
-          {wick(wickOfProp(prop, { tonight, nextRound }), { width: 150, label: wickWords(prop, tonight) })}
+          {wick(wickOfProp(prop, { tonight, nextRound }), { width: 180, label: wickWords(prop, tonight) })}
         </span>
         <span class="row-when">
           {withSign && (

@@ -24,7 +24,12 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
         <Step title="It takes tonight" result={mah(why.mahTonight)}>
           {why.meanMa === null ? 'no draw is known' : `${ma(why.meanMa)} lit`} for{' '}
           {hours(why.litHoursTonight)}, and {ma(why.standbyMa)} while it waits
-          {(isDefault('standbyMa') || isDefault('meanMa')) && <Default />}
+          {(isDefault('standbyMa') || isDefault('meanMa')) && (
+            <>
+              {' '}
+              <Default />
+            </>
+          )}
           {prop.trips && `, and ${prop.trips.perShowNight} trips of ${prop.trips.seconds} s on a show night`}
         </Step>
         <Step
@@ -39,7 +44,7 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
           <Factor value={why.healthShare} words="for the age of the set" />
           <Factor value={why.leftAtStartShare} words="in it when it was fitted" />
           {usableMah !== null && (
-            <span class="soft"> In a warm room it would be {mah(usableMah.at20C)}.</span>
+            <span class="soft">. In a warm room it would be {mah(usableMah.at20C)}.</span>
           )}
         </Step>
         <Step title="Used since it was fitted" result={usedMah === null ? 'not known' : mah(usedMah)}>
@@ -47,9 +52,9 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
             ? 'no swap on record'
             : `fitted ${shortMomentWords(Date.parse(forecast.fittedAt), timeZone)}${forecast.usedShare === null ? '' : `; that is ${percent(forecast.usedShare)} of what it gives`}`}
         </Step>
-        <Step title="It drains at" result={`${figures(drainFactor.likely, 2)} × the sum`}>
-          between {figures(drainFactor.low, 2)} and {figures(drainFactor.high, 2)} times, four times in five:
-          from what was seen so far
+        <Step title="It drains at" result={`${figures(drainFactor.likely)} × the sum`}>
+          between {figures(drainFactor.low)} and {figures(drainFactor.high)} times, four times in five: from
+          what was seen so far
         </Step>
         <Step title="So it looks dim" result={rangeWords(forecast.dim, tonight)}>
           {why.mahTonight > 0 && usableMah !== null && usedMah !== null
@@ -88,4 +93,4 @@ function Factor({ value, words }: { value: number; words: string }) {
   );
 }
 
-const Default = () => <span class="badge"> usual, not measured</span>;
+const Default = () => <span class="badge">usual, not measured</span>;

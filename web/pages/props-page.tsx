@@ -9,13 +9,13 @@ import { useRead } from '../state/read.ts';
 import { useShell } from '../state/shell.tsx';
 import { GROUP_WORDS } from '../words/names.ts';
 import { counted } from '../words/quantity.ts';
-import { PropRow } from './prop-row.tsx';
+import { PropRow, WickKey } from './prop-row.tsx';
 
 type Order = 'tag' | 'swap';
 
 /** Every prop of the site, zone by zone. */
 export function PropsPage({ site }: { site: Site }) {
-  const { asOf } = useShell();
+  const { asOf, tonight } = useShell();
   const forecast = useRead(`forecast ${site.id} ${asOf}`, () => api.siteForecast(site.id, asOf));
   const [wanted, setWanted] = useState('');
   const [order, setOrder] = useState<Order>('tag');
@@ -50,18 +50,21 @@ export function PropsPage({ site }: { site: Site }) {
           />
         </search>
       )}
+      {props.length > 0 && <WickKey />}
       <Status>{wanted.trim() !== '' && `${counted(shown.length, 'prop')} of ${props.length}`}</Status>
       {forecast.value && props.length === 0 && (
         <p class="lead">No props yet. The first one starts the list.</p>
       )}
-      {forecast.value && order === 'tag' && <ByZone props={shown} forecast={forecast.value} />}
+      {forecast.value && order === 'tag' && (
+        <ByZone props={shown} forecast={forecast.value} tonight={tonight} />
+      )}
       {forecast.value && order === 'swap' && (
         <ul class="rows">
           {shown.toSorted(bySwap).map((prop) => (
             <PropRow
               key={prop.propId}
               prop={prop}
-              tonight={forecast.value!.evening}
+              tonight={tonight}
               nextRound={forecast.value!.nextRound}
               withSign
             />
@@ -89,7 +92,15 @@ const bySwap = (one: SiteForecastProp, other: SiteForecastProp) =>
   (one.swapBy ?? '9999').localeCompare(other.swapBy ?? '9999') || byTag(one, other);
 
 /** Zones in the order of the first tag in each, which is how people number a walk. */
-function ByZone({ props, forecast }: { props: SiteForecastProp[]; forecast: SiteForecast }) {
+function ByZone({
+  props,
+  forecast,
+  tonight,
+}: {
+  props: SiteForecastProp[];
+  forecast: SiteForecast;
+  tonight: string;
+}) {
   const sorted = props.toSorted(byTag);
   const zones = [...new Set(sorted.map(({ zone }) => zone))];
   return (
@@ -106,7 +117,7 @@ function ByZone({ props, forecast }: { props: SiteForecastProp[]; forecast: Site
                 <PropRow
                   key={prop.propId}
                   prop={prop}
-                  tonight={forecast.evening}
+                  tonight={tonight}
                   nextRound={forecast.nextRound}
                   withSign
                 />

@@ -1,100 +1,127 @@
-import { useEffect, useState } from 'preact/hooks';
+import { useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
 import type { ShowNight, Site } from '../api/types.ts';
-import { TickField } from '../parts/field.tsx';
+import { TextField } from '../parts/field.tsx';
 import { FormTrouble, Status, Trouble } from '../parts/notice.tsx';
-import { sortFaults } from '../state/form.ts';
+import { useForm } from '../state/form.ts';
 import { useRead } from '../state/read.ts';
 import { addDays, dateWords } from '../words/time.ts';
 
-/** The evenings visitors come, with gate hours; one may be called off or put in late. */
+/** The evenings visitors come, with gate hours; one may be called off or put in late. Every deed is kept at once. */
 export function SiteShowNights({ site, onSaved }: { site: Site; onSaved: () => void }) {
   const read = useRead(`show-nights ${site.id}`, () => api.showNights(site.id));
-  const [nights, setNights] = useState<ShowNight[] | null>(null);
-  const [trouble, setTrouble] = useState<string | null>(null);
+  const form = useForm({ evening: '', opensAt: '', closesAt: '' });
   const [said, setSaid] = useState('');
-  useEffect(() => setNights(read.value), [read.value]);
-
-  const shown = nights ?? [];
-  const change = (index: number, changes: Partial<ShowNight>) =>
-    setNights(shown.map((night, place) => (place === index ? { ...night, ...changes } : night)));
-  const add = () => {
-    const last = shown.at(-1);
-    const evening = last ? addDays(last.evening, 1) : site.seasonFrom;
-    setNights([
-      ...shown,
-      { evening, opensAt: last?.opensAt ?? '18:30', closesAt: last?.closesAt ?? '21:30' },
-    ]);
+  const nights = read.value ?? [];
+  const last = nights.at(-1);
+  // What the next night is likely to be: the day after the last one, at the same hours.
+  const typed = {
+    evening: form.fields.evening || (last ? addDays(last.evening, 1) : site.seasonFrom),
+    opensAt: form.fields.opensAt || (last?.opensAt ?? '18:30'),
+    closesAt: form.fields.closesAt || (last?.closesAt ?? '21:30'),
   };
-  const save = async () => {
-    const answer = await api.setShowNights(
-      site.id,
-      shown.toSorted((one, other) => one.evening.localeCompare(other.evening)),
-    );
-    setTrouble(answer.ok ? null : sortFaults(answer.problem, []).trouble);
-    setSaid(answer.ok ? 'Show nights saved.' : '');
-    if (!answer.ok) return;
+
+  const keep = async (next: ShowNight[], words: string) => {
+    const saved = await form.send(() => api.setShowNights(site.id, next));
+    setSaid(saved ? words : '');
+    if (!saved) return;
+    form.reset({ evening: '', opensAt: '', closesAt: '' });
     onSaved();
     await read.again();
   };
+  const without = (evening: string) => nights.filter((night) => night.evening !== evening);
+  const add = () =>
+    keep(
+      [...without(typed.evening), typed].toSorted((one, other) => one.evening.localeCompare(other.evening)),
+      `${dateWords(typed.evening)} is a show night.`,
+    );
+  const callOff = (night: ShowNight, calledOff: boolean) =>
+    keep(
+      nights.map((one) => (one === night ? { ...one, calledOff } : one)),
+      `${dateWords(night.evening)} is ${calledOff ? 'called off' : 'on again'}.`,
+    );
 
   return (
     <section class="sheet" aria-labelledby="shows-title">
       <h2 id="shows-title">Show nights</h2>
       {read.problem && <Trouble problem={read.problem} onAgain={() => void read.again()} />}
-      {nights?.length === 0 && (
+      {read.value?.length === 0 && (
         <p class="soft">None yet. Without show nights, every night of the season counts as a night off.</p>
       )}
-      <FormTrouble text={trouble} />
       <ul class="show-nights">
-        {shown.map((night, index) => (
-          <li key={index} class={night.calledOff ? 'called-off' : undefined}>
-            <input
-              type="date"
-              aria-label="Evening"
-              value={night.evening}
-              onInput={(event) => change(index, { evening: event.currentTarget.value })}
-            />
-            <input
-              type="time"
-              aria-label={`${say(night)}: gate opens`}
-              value={night.opensAt}
-              onInput={(event) => change(index, { opensAt: event.currentTarget.value })}
-            />
-            <input
-              type="time"
-              aria-label={`${say(night)}: gate closes`}
-              value={night.closesAt}
-              onInput={(event) => change(index, { closesAt: event.currentTarget.value })}
-            />
-            <TickField
-              label="called off"
-              checked={night.calledOff ?? false}
-              onTick={(calledOff) => change(index, { calledOff })}
-            />
-            <button
-              type="button"
-              class="quiet"
-              aria-label={`Take out ${say(night)}`}
-              onClick={() => setNights(shown.filter((_, place) => place !== index))}
-            >
-              Take out
-            </button>
-          </li>
+        {nights.map((night) => (
+          <ShowNightLine
+            key={night.evening}
+            night={night}
+            onCallOff={(calledOff) => void callOff(night, calledOff)}
+            onTakeOut={() => void keep(without(night.evening), `${dateWords(night.evening)} is taken out.`)}
+          />
         ))}
       </ul>
-      <div class="button-row">
-        <button type="button" class="button-plain" onClick={add}>
-          Add a night
-        </button>
-        <button type="button" onClick={() => void save()}>
-          Save show nights
-        </button>
-      </div>
       <Status>{said}</Status>
+      <form
+        onSubmit={(event) => {
+          event.preventDefault();
+          void add();
+        }}
+      >
+        <FormTrouble text={form.trouble} />
+        <TextField
+          label="Another evening"
+          type="date"
+          value={typed.evening}
+          onText={(text) => form.set('evening', text)}
+          hint="One that is there already gets the new hours"
+        />
+        <div class="field-pair">
+          <TextField
+            label="Gate opens"
+            type="time"
+            value={typed.opensAt}
+            onText={(text) => form.set('opensAt', text)}
+          />
+          <TextField
+            label="Gate closes"
+            type="time"
+            value={typed.closesAt}
+            onText={(text) => form.set('closesAt', text)}
+          />
+        </div>
+        <button type="submit">Add this night</button>
+      </form>
     </section>
   );
 }
 
-const say = (night: ShowNight) =>
-  /^\d{4}-\d{2}-\d{2}$/.test(night.evening) ? dateWords(night.evening) : 'new night';
+type LineProps = { night: ShowNight; onCallOff: (calledOff: boolean) => void; onTakeOut: () => void };
+
+function ShowNightLine({ night, onCallOff, onTakeOut }: LineProps) {
+  const off = night.calledOff ?? false;
+  return (
+    <li class={off ? 'called-off' : undefined}>
+      <span class="show-night-words">
+        {dateWords(night.evening)}{' '}
+        <span class="show-night-time">
+          {night.opensAt} – {night.closesAt}
+        </span>
+        {off && ' called off'}
+      </span>
+      <button
+        type="button"
+        class="quiet"
+        aria-label={`${off ? 'On again' : 'Call off'}: ${dateWords(night.evening)}`}
+        onClick={() => onCallOff(!off)}
+      >
+        {off ? 'On again' : 'Call off'}
+      </button>
+      <button
+        type="button"
+        class="quiet"
+        aria-label={`Take out ${dateWords(night.evening)}`}
+        onClick={onTakeOut}
+      >
+        Take out
+      </button>
+    </li>
+  );
+}

@@ -1,3 +1,4 @@
+import type { ComponentChildren } from 'preact';
 import { api } from '../api/client.ts';
 import type { Night, Site, SiteForecast, SiteForecastProp } from '../api/types.ts';
 import { sign } from '../drawing/sign.ts';
@@ -10,7 +11,7 @@ import { useShell } from '../state/shell.tsx';
 import { GROUP_WORDS, GROUPS, type Group } from '../words/names.ts';
 import { counted, degrees, hours } from '../words/quantity.ts';
 import { dateWords, wallTime } from '../words/time.ts';
-import { PropRow } from './prop-row.tsx';
+import { PropRow, WickKey } from './prop-row.tsx';
 import { SeasonBand } from './season-band.tsx';
 
 /** What goes dim before anybody can get there. */
@@ -18,12 +19,11 @@ export function TonightPage({ site }: { site: Site }) {
   const { asOf, place, health, tonight } = useShell();
   const forecast = useRead(`forecast ${site.id} ${asOf}`, () => api.siteForecast(site.id, asOf));
   const nights = useRead(`nights ${site.id} ${asOf}`, () => api.nights(site.id, asOf));
-  const evening = forecast.value?.evening ?? tonight;
   const isRunning = health?.asOf === null && place.asOf === null;
 
   return (
     <div class="tonight" aria-busy={forecast.loading}>
-      <PageHead title={`Tonight, ${dateWords(evening)}`}>
+      <PageHead title={`Tonight, ${dateWords(tonight)}`}>
         {isRunning && (
           <details class="another-day">
             <summary>Look at another day</summary>
@@ -36,15 +36,17 @@ export function TonightPage({ site }: { site: Site }) {
       {forecast.value && <Answer forecast={forecast.value} />}
       <TonightFacts
         site={site}
-        evening={evening}
+        evening={tonight}
         nights={nights.value}
         nextRound={forecast.value?.nextRound ?? null}
       />
-      {forecast.value && <Groups forecast={forecast.value} />}
-      {nights.value && <SeasonBand nights={nights.value} site={site} tonight={evening} />}
+      {forecast.value && <Groups forecast={forecast.value} tonight={tonight} />}
+      {nights.value && <SeasonBand nights={nights.value} site={site} tonight={tonight} />}
     </div>
   );
 }
+
+const FOLDED_ABOVE = 8;
 
 const ofGroup = (props: SiteForecastProp[], group: Group) => props.filter((prop) => prop.group === group);
 
@@ -141,9 +143,11 @@ function gateWords(night: Night): string {
   return `${night.showNight.opensAt} – ${night.showNight.closesAt}`;
 }
 
-function Groups({ forecast }: { forecast: SiteForecast }) {
+function Groups({ forecast, tonight }: { forecast: SiteForecast; tonight: string }) {
+  if (forecast.props.length === 0) return null;
   return (
     <>
+      <WickKey />
       {GROUPS.map((group) => {
         const props = ofGroup(forecast.props, group).toSorted(byUrgency);
         if (props.length === 0) return null;
@@ -153,20 +157,28 @@ function Groups({ forecast }: { forecast: SiteForecast }) {
               {sign(group)} {GROUP_WORDS[group].title} <span class="group-count">{props.length}</span>
             </h2>
             <p class="soft">{GROUP_WORDS[group].about}</p>
-            <ul class="rows">
-              {props.map((prop) => (
-                <PropRow
-                  key={prop.propId}
-                  prop={prop}
-                  tonight={forecast.evening}
-                  nextRound={forecast.nextRound}
-                />
-              ))}
-            </ul>
+            <Foldable count={group === 'fine' ? props.length : 0}>
+              <ul class="rows">
+                {props.map((prop) => (
+                  <PropRow key={prop.propId} prop={prop} tonight={tonight} nextRound={forecast.nextRound} />
+                ))}
+              </ul>
+            </Foldable>
           </section>
         );
       })}
     </>
+  );
+}
+
+/** A long list nobody has to act on stays folded, so that the rest is in sight. */
+function Foldable({ count, children }: { count: number; children: ComponentChildren }) {
+  if (count <= FOLDED_ABOVE) return <>{children}</>;
+  return (
+    <details>
+      <summary>Show all {count}</summary>
+      {children}
+    </details>
   );
 }
 

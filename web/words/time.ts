@@ -87,6 +87,16 @@ export function eveningOf(at: number, timeZone: string): string {
   return wall.hour < 12 ? addDays(date, -1) : date;
 }
 
+/**
+ * The night people mean by "tonight": the one that is on, or from six in the morning the one to come. An evening
+ * lasts to the next noon, but nobody at breakfast calls last night tonight.
+ */
+export function nightMeant(at: number, timeZone: string): string {
+  const evening = eveningOf(at, timeZone);
+  const { hour } = wallOf(at, timeZone);
+  return hour >= 6 && hour < 12 ? addDays(evening, 1) : evening;
+}
+
 /** Pure calendar arithmetic on 'YYYY-MM-DD'. */
 export function addDays(date: string, days: number): string {
   return new Date(Date.parse(`${date}T00:00:00Z`) + days * DAY_MS).toISOString().slice(0, 10);
