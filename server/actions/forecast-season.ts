@@ -1,10 +1,11 @@
 import {
   addEvenings,
   type Evening,
+  eveningAhead,
   eveningOf,
   eveningsBetween,
   type Instant,
-  wallTimeOf,
+  instantInEvening,
 } from '../model/evening.ts';
 import type { LogEntry } from '../model/log-entry.ts';
 import type { Prop } from '../model/prop.ts';
@@ -50,7 +51,7 @@ export function forecastSeason(
   },
 ): ForecastSeason {
   const { seasonThrough, timeZone } = siteOf(deps.store.db, of.siteId);
-  const today = eveningOf(of.asOf, timeZone);
+  const today = eveningAhead(of.asOf, timeZone);
   const lastWanted = of.through ?? seasonThrough;
   const through = eveningsBetween(today, lastWanted) >= 0 ? lastWanted : today;
   let from = today;
@@ -72,7 +73,7 @@ export function forecastSeason(
     .filter((night) => !night.calledOff)
     .map((night) => night.evening)
     .sort();
-  const tooLateToday = wallTimeOf(of.asOf, timeZone) > site.rounds.startsAt && of.asOf >= 0;
+  const tooLateToday = of.asOf > instantInEvening(today, site.rounds.startsAt, timeZone);
   return {
     site,
     season: { place, from, through: last, weather, showNights },

@@ -234,6 +234,18 @@ export function eveningOf(at: Instant, timeZone: string): Evening {
 
 // ---- Wall times ----
 
+/** From this hour on a morning belongs, in people's minds, to the evening to come. Common practice, no source. */
+const MORNING_HOUR_MS = 6 * HOUR_MS;
+
+/**
+ * The evening people mean by "tonight": the one under way until six in the morning, then the one to come.
+ * @param at the instant
+ * @param timeZone IANA name
+ */
+export function eveningAhead(at: Instant, timeZone: string): Evening {
+  return eveningOf(at + MORNING_HOUR_MS, timeZone);
+}
+
 /**
  * Minutes since midnight of a wall time.
  * @param wallTime 'HH:MM', 00:00 to 23:59

@@ -44,6 +44,11 @@ const POLAR_COSINE = 0.001;
 // A second of movement leaves an error of some hundredths of a second.
 const SOLVED_DAYS = 1e-5;
 
+// The date line has two names, and both must give the same night to the last bit.
+function turnsEast({ longitudeDeg }: Position): number {
+  return longitudeDeg === -180 ? 0.5 : longitudeDeg / 360;
+}
+
 function checkPosition(position: Position): void {
   checkWithin(position.latitudeDeg, 'latitudeDeg', LATITUDES_DEG);
   checkWithin(position.longitudeDeg, 'longitudeDeg', LONGITUDES_DEG);
@@ -63,7 +68,7 @@ export function sunAltitudeDeg(at: Instant, position: Position): number {
   const day = Math.floor(at / DAY_MS);
   const days = at / DAY_MS - day;
   const sunDay = sunDayOf(day);
-  const hourTurns = days + position.longitudeDeg / 360 + noonTurnsAt(sunDay, days) - 0.5;
+  const hourTurns = days + turnsEast(position) + noonTurnsAt(sunDay, days) - 0.5;
   const sinDeclination = sinDeclinationAt(sunDay, days);
   const latitudeRad = position.latitudeDeg * RAD_PER_DEG;
   const sinAltitude =
@@ -75,15 +80,15 @@ export function sunAltitudeDeg(at: Instant, position: Position): number {
 }
 
 // Number of the solar noon nearest to an instant by the mean sun, which the true sun never leaves by more than 17 min.
-function nearestNoon(at: Instant, longitudeDeg: number): number {
-  return Math.round(at / DAY_MS + longitudeDeg / 360 - 0.5);
+function nearestNoon(at: Instant, position: Position): number {
+  return Math.round(at / DAY_MS + turnsEast(position) - 0.5);
 }
 
 function nightAfterNoon(noon: number, position: Position): Night {
-  const midnight = noon + 1 - position.longitudeDeg / 360;
+  const midnight = noon + 1 - turnsEast(position);
   const day = Math.floor(midnight);
   const sunDay = sunDayOf(day);
-  const turnsOrigin = noon + 0.5 - position.longitudeDeg / 360 - day;
+  const turnsOrigin = noon + 0.5 - turnsEast(position) - day;
   const startDays = turnsOrigin - noonTurnsAt(sunDay, turnsOrigin);
   const endDays = turnsOrigin + 1 - noonTurnsAt(sunDay, turnsOrigin + 1);
   const latitudeRad = position.latitudeDeg * RAD_PER_DEG;
@@ -105,7 +110,7 @@ function isPolar(position: Position): boolean {
 // At a pole the night is the evening itself, since every meridian's noon is as good as any other.
 function polarNight(evening: Evening, place: Place): Night {
   const { startAt, endAt } = eveningSpan(evening, place.timeZone);
-  const night = nightAfterNoon(nearestNoon(startAt, place.longitudeDeg), place);
+  const night = nightAfterNoon(nearestNoon(startAt, place), place);
   const day = Math.floor((startAt + endAt) / 2 / DAY_MS);
   return {
     ...night,
@@ -113,7 +118,7 @@ function polarNight(evening: Evening, place: Place): Night {
     endAt,
     day,
     sunDay: sunDayOf(day),
-    turnsOrigin: 0.5 - place.longitudeDeg / 360,
+    turnsOrigin: 0.5 - turnsEast(place),
   };
 }
 
@@ -128,7 +133,7 @@ function polarNight(evening: Evening, place: Place): Night {
 export function nightOf(evening: Evening, place: Place): Night {
   checkPosition(place);
   if (isPolar(place)) return polarNight(evening, place);
-  return nightAfterNoon(nearestNoon(localNoonAt(evening, place.timeZone), place.longitudeDeg), place);
+  return nightAfterNoon(nearestNoon(localNoonAt(evening, place.timeZone), place), place);
 }
 
 /**
@@ -142,8 +147,8 @@ export function nightsDuring(evening: Evening, place: Place): Night[] {
   checkPosition(place);
   if (isPolar(place)) return [polarNight(evening, place)];
   const { startAt, endAt } = eveningSpan(evening, place.timeZone);
-  const first = nearestNoon(startAt, place.longitudeDeg) - 1;
-  const last = nearestNoon(endAt, place.longitudeDeg);
+  const first = nearestNoon(startAt, place) - 1;
+  const last = nearestNoon(endAt, place);
   const nights: Night[] = [];
   for (let noon = first; noon <= last; noon += 1) {
     const night = nightAfterNoon(noon, place);

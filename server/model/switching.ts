@@ -130,18 +130,25 @@ function clockLighting({ onAt, offAt }: ClockSwitch, { evening, place }: Circums
   return { spells, reason: null };
 }
 
+// Set again since it got its cells, a timer ran from when they went in until then, and from then on by its new count.
 function timerLighting(timer: IntervalTimer, circumstances: Circumstances): Lighting {
   const { evening, place, poweredSinceAt } = circumstances;
-  const startedAt = Math.max(timer.setAt ?? -Infinity, poweredSinceAt);
-  checkFinite(startedAt, 'setAt or poweredSinceAt');
-  const { startAt, endAt } = eveningSpan(evening, place.timeZone);
-  if (startedAt >= endAt) return { spells: [], reason: 'Its timer is not set yet this evening.' };
-  const spells: LitSpell[] = [];
-  const firstTurn = Math.max(0, Math.floor((startAt - startedAt) / DAY_MS));
-  for (let fromAt = startedAt + firstTurn * DAY_MS; fromAt < endAt; fromAt += DAY_MS) {
-    spells.push({ fromAt, untilAt: fromAt + timer.onHours * HOUR_MS });
+  const setAt = Math.max(timer.setAt ?? -Infinity, poweredSinceAt);
+  checkFinite(setAt, 'setAt or poweredSinceAt');
+  const span = eveningSpan(evening, place.timeZone);
+  if (Math.min(setAt, poweredSinceAt) >= span.endAt) {
+    return { spells: [], reason: 'Its timer is not set yet this evening.' };
   }
-  return { spells, reason: null };
+  const counted = (startedAt: Instant, untilAt: Instant): LitSpell[] => {
+    const spells: LitSpell[] = [];
+    const firstTurn = Math.max(0, Math.floor((span.startAt - startedAt) / DAY_MS));
+    for (let fromAt = startedAt + firstTurn * DAY_MS; fromAt < untilAt; fromAt += DAY_MS) {
+      spells.push({ fromAt, untilAt: Math.min(fromAt + timer.onHours * HOUR_MS, untilAt) });
+    }
+    return spells;
+  };
+  const before = Number.isFinite(poweredSinceAt) ? counted(poweredSinceAt, Math.min(setAt, span.endAt)) : [];
+  return { spells: [...before, ...counted(setAt, span.endAt + DAY_MS)], reason: null };
 }
 
 function handLighting({ evening, place, showNight }: Circumstances): Lighting {

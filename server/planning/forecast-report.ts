@@ -3,6 +3,7 @@ import { COURSE_WORDS } from '../model/depletion.ts';
 import {
   addEvenings,
   type Evening,
+  eveningOf,
   eveningSpan,
   eveningsBetween,
   HOUR_MS,
@@ -38,10 +39,11 @@ function todayIn(projection: PropProjection, today: Evening): number {
  */
 export function usedMahAt(projection: PropProjection, asked: Asked): number {
   const { depletion } = projection;
-  const n = todayIn(projection, asked.wanted.today);
+  const { timeZone } = asked.season.place;
+  const n = todayIn(projection, eveningOf(asked.asOf, timeZone));
   const evening = addEvenings(projection.from, n);
   const before = n === 0 ? startMah(projection) : depletion.usedMah[n - 1]!;
-  const span = eveningSpan(evening, asked.season.place.timeZone);
+  const span = eveningSpan(evening, timeZone);
   const lit = litEvening(asked.prop.switching, {
     evening,
     place: asked.season.place,

@@ -196,7 +196,11 @@ describe('interval timer', () => {
       '2026-12-02T12:00:00Z/2026-12-02T15:00:00Z',
       '2026-12-03T09:00:00Z/2026-12-03T12:00:00Z',
     ]);
-    expect(lit({ ...timer, setAt }, '2026-11-25', { poweredSince }).reason).toMatch(/not set yet/);
+    // Until then it ran by the count that began when the cells went in, and that count ends where the new one begins.
+    expect(spelled(lit({ ...timer, setAt }, '2026-11-25', { poweredSince }))).toEqual([
+      '2026-11-25T16:00:00Z/2026-11-25T22:00:00Z',
+    ]);
+    expect(lit({ ...timer, setAt }, '2026-11-19', { poweredSince }).spells).toEqual([]);
   });
 
   test('round the clock is one spell', () => {
