@@ -1,7 +1,7 @@
 import { degrees } from '../words/quantity.ts';
 import { dateWords, minutesPastNoon } from '../words/time.ts';
+import { dateAxis } from './date-axis.ts';
 import { type EveningScale, eveningScale, type Scale, straight } from './scale.ts';
-import { dateAxis } from './season-wick.ts';
 import { markShape } from './sign.ts';
 import { type Drawing, draw, group, path, picture, rect, round } from './svg.ts';
 

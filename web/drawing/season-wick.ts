@@ -1,5 +1,5 @@
-import { dateWords, dayNumber, monthWord } from '../words/time.ts';
-import { type EveningScale, eveningScale, labelledEvenings, straight } from './scale.ts';
+import { dateAxis } from './date-axis.ts';
+import { type EveningScale, eveningScale, straight } from './scale.ts';
 import { type Mark, markShape } from './sign.ts';
 import {
   type Box,
@@ -225,20 +225,31 @@ function shapeAt(mark: Mark, at: { x: number; y: number }, text: string | null):
   ]);
 }
 
+/** Room two words need beside each other above their lines. */
+const GUIDE_WORDS_WIDTH = 46;
+
 function guides(values: SeasonValues, x: EveningScale): Drawing {
-  const bottom = ROWS.axis.y;
-  const guide = (evening: string | null, className: string, text: string) => {
-    if (evening === null || !x.has(evening)) return [];
-    const at = x.middle(evening);
-    return [
-      path(className, `M${round(at)} ${ROWS.marks.y}V${bottom}`),
-      draw('text', { class: 'guide-word', x: at, y: 11 }, [text]),
-    ];
-  };
-  const isSame = values.nextRound === values.tonight;
+  const { tonight, nextRound } = values;
+  const isSame = tonight === nextRound;
+  const at = (evening: string | null) => (evening !== null && x.has(evening) ? x.middle(evening) : null);
+  const tonightAt = at(tonight);
+  const roundAt = isSame ? null : at(nextRound);
+  const isTight = tonightAt !== null && roundAt !== null && Math.abs(roundAt - tonightAt) < GUIDE_WORDS_WIDTH;
+  const guide = (place: number, of: { name: string; text: string; side: 'middle' | 'start' | 'end' }) => [
+    path(`guide-${of.name}`, `M${round(place)} ${ROWS.marks.y}V${ROWS.axis.y}`),
+    draw('text', { class: `guide-word side-${of.side}`, x: place, y: 11 }, [of.text]),
+  ];
   return group('season-guides', [
-    ...guide(values.tonight, 'guide-tonight', isSame ? 'tonight: round' : 'tonight'),
-    ...(isSame ? [] : guide(values.nextRound, 'guide-round', 'round')),
+    ...(tonightAt === null
+      ? []
+      : guide(tonightAt, {
+          name: 'tonight',
+          text: isSame ? 'tonight: round' : 'tonight',
+          side: isTight ? 'end' : 'middle',
+        })),
+    ...(roundAt === null
+      ? []
+      : guide(roundAt, { name: 'round', text: 'round', side: isTight ? 'start' : 'middle' })),
   ]);
 }
 
@@ -267,27 +278,6 @@ function showNightTicks(nights: SeasonNight[], x: EveningScale): Drawing {
     });
   });
   return group('season-shows', boxes);
-}
-
-/** Dates under the columns; the month where it begins or changes. Also used by the night band. */
-export function dateAxis(evenings: string[], x: EveningScale, y: number): Drawing {
-  let month = '';
-  const labels = labelledEvenings(evenings, x.columnWidth).map((evening) => {
-    const isNew = monthWord(evening) !== month;
-    month = monthWord(evening);
-    return draw('g', { class: 'axis-date' }, [
-      draw('title', {}, [dateWords(evening)]),
-      draw('text', { class: 'axis-day', x: x.middle(evening), y: y + 11 }, [String(dayNumber(evening))]),
-      isNew ? draw('text', { class: 'axis-month', x: x.middle(evening), y: y + 24 }, [month]) : null,
-    ]);
-  });
-  return group('axis', [
-    path(
-      'row-line',
-      `M${round(x.left(evenings[0]!))} ${y}H${round(x.left(evenings.at(-1)!) + x.columnWidth)}`,
-    ),
-    ...labels,
-  ]);
 }
 
 function axis(nights: SeasonNight[], x: EveningScale): Drawing {

@@ -4,7 +4,7 @@ import { dimWords } from '../words/range.ts';
 import { nightsBetween } from '../words/time.ts';
 import type { WickValues } from './wick.ts';
 
-type Prospect = Pick<SiteForecastProp, 'leftShare' | 'dim' | 'dark' | 'cause'>;
+type Prospect = Pick<SiteForecastProp, 'leftShare' | 'dim' | 'dark' | 'cause' | 'lastSeen'>;
 
 /** From evenings to nights from tonight, which is what a wick is drawn from. */
 export function wickOfProp(
@@ -13,7 +13,9 @@ export function wickOfProp(
 ): WickValues {
   const nights = (evening: string | null) =>
     evening === null ? null : nightsBetween(moment.tonight, evening);
-  const darkLikelyNights = nights(prop.dark.likely);
+  const reckoned = nights(prop.dark.likely);
+  // Somebody who saw it dim saw it lit: that beats a sum that has it dark already.
+  const darkLikelyNights = prop.lastSeen === 'dim' && reckoned !== null && reckoned <= 0 ? null : reckoned;
   return {
     leftShare: prop.leftShare,
     dim: {

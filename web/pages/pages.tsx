@@ -21,8 +21,9 @@ export function Pages() {
 }
 
 function Chosen() {
-  const { place, sites, site, problem, reload } = useShell();
-  if (!sites) {
+  const { place, sites, site, health, problem, reload } = useShell();
+  // Before the moment is known nothing can be told from tonight.
+  if (!sites || !health) {
     return problem ? (
       <Trouble problem={problem} onAgain={() => void reload()} />
     ) : (

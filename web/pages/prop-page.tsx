@@ -1,16 +1,18 @@
+import type { ComponentChildren } from 'preact';
 import { useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
-import type { CellType, EveningRange, LogEntry, Prop, PropForecast, Site } from '../api/types.ts';
+import type { CellType, LogEntry, Prop, PropForecast, Site, SiteForecastProp } from '../api/types.ts';
+import { sign } from '../drawing/sign.ts';
 import { Link } from '../parts/link.tsx';
 import { Cautions, Status, Trouble, Waiting } from '../parts/notice.tsx';
 import { PageHead } from '../parts/page-head.tsx';
 import { forgetAnswers, useRead } from '../state/read.ts';
 import { useShell } from '../state/shell.tsx';
 import { cautionsFor, REMINDER } from '../words/cautions.ts';
-import { drawWords, entryWords, IMPORTANCE_WORDS, switchingWords } from '../words/names.ts';
-import { wiringWords } from '../words/quantity.ts';
-import { dimWords, rangeWords, swapByWords } from '../words/range.ts';
-import { nightMeant, shortMomentWords } from '../words/time.ts';
+import { drawWords, entryWords, GROUP_WORDS, IMPORTANCE_WORDS, switchingWords } from '../words/names.ts';
+import { percent, wiringWords } from '../words/quantity.ts';
+import { dimWords, movedWords, rangeWords, swapByWords } from '../words/range.ts';
+import { eveningAhead, shortMomentWords } from '../words/time.ts';
 import { PropSeason } from './prop-season.tsx';
 import { PropSum } from './prop-sum.tsx';
 import { SightingButtons } from './sighting-buttons.tsx';
@@ -26,6 +28,9 @@ export function PropPage({ propId }: { propId: string }) {
   const forecast = useRead(`prop-forecast ${propId} ${asOf}`, () => api.forecast(propId, asOf));
   const log = useRead(`log ${propId}`, () => api.log(propId));
   const cellTypes = useRead('cell-types', api.cellTypes);
+  const siteForecast = useRead(prop.value && `forecast ${prop.value.siteId} ${asOf}`, () =>
+    api.siteForecast(prop.value!.siteId, asOf),
+  );
   const [done, setDone] = useState<Done | null>(null);
   const site = sites?.find(({ id }) => id === prop.value?.siteId);
 
@@ -33,17 +38,27 @@ export function PropPage({ propId }: { propId: string }) {
     if (prop.problem) return <Trouble problem={prop.problem} onAgain={() => void prop.again()} />;
     return <Waiting what="the prop" />;
   }
-  const tonight = nightMeant(momentAt, site.timeZone);
+  const tonight = eveningAhead(momentAt, site.timeZone);
   const cellType = cellTypes.value?.find(
     ({ id }) => id === (forecast.value?.cellTypeId ?? prop.value!.cellTypeId),
+  );
+
+  const line = siteForecast.value?.props.find((one) => one.propId === propId) ?? null;
+  const nextRound = siteForecast.value?.nextRound ?? null;
+  // A day before the last deed may be asked for: what was recorded after it has not happened yet.
+  const entries = (log.value?.entries ?? []).filter(
+    (entry) => entry.undoneAt === undefined && Date.parse(entry.at) <= momentAt,
   );
 
   /** Reads everything again and says how the date moved. */
   const afterDeed = async (text: string, deed: { hints: string[]; undoId: string | null }) => {
     const before = forecast.value;
     forgetAnswers();
-    const [after] = await Promise.all([forecast.again(), log.again()]);
-    setDone({ ...deed, text: `${text} ${movedWords(before, after, tonight)}` });
+    const [after] = await Promise.all([forecast.again(), log.again(), siteForecast.again()]);
+    setDone({
+      ...deed,
+      text: `${text} ${movedWords({ before: dimOf(before), after: dimOf(after), tonight })}`,
+    });
   };
   const undo = async (entryId: string) => {
     const answer = await api.undo(propId, entryId);
@@ -58,7 +73,7 @@ export function PropPage({ propId }: { propId: string }) {
       {forecast.problem && <Trouble problem={forecast.problem} onAgain={() => void forecast.again()} />}
       {!forecast.value && !forecast.problem && <Waiting what="the forecast" />}
       <div class="prop-columns">
-        {forecast.value && <PropAnswer forecast={forecast.value} tonight={tonight} />}
+        {forecast.value && <PropAnswer forecast={forecast.value} line={line} tonight={tonight} />}
         <div class="prop-side">
           <SightingButtons prop={prop.value} onDone={afterDeed} />
           <SwapForm
@@ -68,15 +83,16 @@ export function PropPage({ propId }: { propId: string }) {
             onDone={afterDeed}
           />
           {cellType && <KindCautions cellType={cellType} prop={prop.value} />}
-          <LogList entries={log.value?.entries ?? []} site={site} onUndo={(id) => void undo(id)} />
+          <LogList entries={entries} site={site} onUndo={(id) => void undo(id)} />
         </div>
         {forecast.value && (
           <div class="prop-main">
             <PropSeason
               forecast={forecast.value}
-              entries={log.value?.entries ?? []}
+              entries={entries}
               timeZone={site.timeZone}
               tonight={tonight}
+              nextRound={nextRound}
             />
             <PropSum forecast={forecast.value} prop={prop.value} tonight={tonight} timeZone={site.timeZone} />
           </div>
@@ -85,6 +101,9 @@ export function PropPage({ propId }: { propId: string }) {
     </article>
   );
 }
+
+/** The dim range, where there is a set to reckon with. */
+const dimOf = (forecast: PropForecast | null) => (forecast?.usableMah ? forecast.dim : null);
 
 function PropHead({ prop }: { prop: Prop }) {
   return (
@@ -119,16 +138,9 @@ function DoneNotice({ done, onUndo }: { done: Done; onUndo: (entryId: string) =>
   );
 }
 
-/** 'Dim: was Thu 22 – Sat 24 Oct, now Mon 2 Nov or later.' */
-export function movedWords(before: PropForecast | null, after: PropForecast | null, tonight: string): string {
-  if (!after) return 'The new date is on its way.';
-  const now = rangeWords(after.dim, tonight);
-  const was = before?.usableMah ? rangeWords(before.dim, tonight) : null;
-  if (was === null) return `Dim: ${now}.`;
-  return was === now ? `Dim: still ${now}.` : `Dim: was ${was}, now ${now}.`;
-}
+type AnswerProps = { forecast: PropForecast; line: SiteForecastProp | null; tonight: string };
 
-function PropAnswer({ forecast, tonight }: { forecast: PropForecast; tonight: string }) {
+function PropAnswer({ forecast, line, tonight }: AnswerProps) {
   if (forecast.fittedAt === null) {
     return (
       <section class="answer" aria-label="Answer">
@@ -137,36 +149,43 @@ function PropAnswer({ forecast, tonight }: { forecast: PropForecast; tonight: st
       </section>
     );
   }
+  const swap = forecast.swapBy === null ? '' : `; ${swapByWords(forecast.swapBy, tonight)}`;
   return (
     <section class="answer" aria-label="Answer">
-      <p class="lead">{capital(dimWords(forecast.dim, tonight))}</p>
+      <p class="lead">{`${capital(dimWords(forecast.dim, tonight))}${swap}.`}</p>
+      {line?.note && <p>{line.note}</p>}
       <dl class="facts">
-        <RangeFact name="Looks dim" range={forecast.dim} tonight={tonight} />
-        <RangeFact name="Goes dark" range={forecast.dark} tonight={tonight} />
-        <div>
-          <dt>Swap</dt>
-          <dd>{swapByWords(forecast.swapBy, tonight).replace(/^swap /, '')}</dd>
-        </div>
+        {line && (
+          <Fact name="Group">
+            <span class="row-group">
+              {sign(line.group)} {GROUP_WORDS[line.group].short}
+            </span>
+          </Fact>
+        )}
+        <Fact name="Goes dark">{rangeWords(forecast.dark, tonight)}</Fact>
+        {forecast.usedShare !== null && <Fact name="Used">{percent(forecast.usedShare)}</Fact>}
         {forecast.cause && (
-          <div>
-            <dt>Because</dt>
-            <dd>
-              {forecast.cause === 'cold' ? 'of the cold: warm it before you throw it out' : 'it is used up'}
-            </dd>
-          </div>
+          <Fact name="Because">
+            {forecast.cause === 'cold' ? 'of the cold, not the cells' : 'it is used up'}
+          </Fact>
         )}
       </dl>
+      {forecast.cause === 'cold' && (
+        <p class="soft">
+          Gone dark in the cold, a set may be good again indoors: warm and test it before it is thrown out.
+        </p>
+      )}
     </section>
   );
 }
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
-function RangeFact({ name, range, tonight }: { name: string; range: EveningRange; tonight: string }) {
+function Fact({ name, children }: { name: string; children: ComponentChildren }) {
   return (
     <div>
       <dt>{name}</dt>
-      <dd>{rangeWords(range, tonight)}</dd>
+      <dd>{children}</dd>
     </div>
   );
 }
@@ -179,34 +198,51 @@ function KindCautions({ cellType, prop }: { cellType: CellType; prop: Prop }) {
 
 type LogListProps = { entries: LogEntry[]; site: Site; onUndo: (entryId: string) => void };
 
+/** The newest are in sight, the rest a tap away. */
+const LOG_IN_SIGHT = 4;
+
 function LogList({ entries, site, onUndo }: LogListProps) {
-  const kept = entries.filter((entry) => entry.undoneAt === undefined);
+  const lines = (some: LogEntry[]) => (
+    <ol>
+      {some.map((entry) => (
+        <LogLine key={entry.id} entry={entry} timeZone={site.timeZone} onUndo={onUndo} />
+      ))}
+    </ol>
+  );
   return (
     <section class="log" aria-labelledby="log-title">
       <h2 id="log-title">Log</h2>
-      {kept.length === 0 && <p class="soft">Nothing recorded yet.</p>}
-      <ol>
-        {kept.map((entry) => {
-          const when = shortMomentWords(Date.parse(entry.at), site.timeZone);
-          return (
-            <li key={entry.id}>
-              <div>
-                <span class="log-when">{when}</span>
-                <span>{entryWords(entry)}</span>
-                {entry.note && <span class="soft">{entry.note}</span>}
-              </div>
-              <button
-                type="button"
-                class="quiet"
-                aria-label={`Undo: ${entryWords(entry)}, ${when}`}
-                onClick={() => onUndo(entry.id)}
-              >
-                Undo
-              </button>
-            </li>
-          );
-        })}
-      </ol>
+      {entries.length === 0 && <p class="soft">Nothing recorded yet.</p>}
+      {lines(entries.slice(0, LOG_IN_SIGHT))}
+      {entries.length > LOG_IN_SIGHT && (
+        <details>
+          <summary>Earlier: {entries.length - LOG_IN_SIGHT}</summary>
+          {lines(entries.slice(LOG_IN_SIGHT))}
+        </details>
+      )}
     </section>
+  );
+}
+
+type LogLineProps = { entry: LogEntry; timeZone: string; onUndo: (entryId: string) => void };
+
+function LogLine({ entry, timeZone, onUndo }: LogLineProps) {
+  const when = shortMomentWords(Date.parse(entry.at), timeZone);
+  return (
+    <li>
+      <div>
+        <span class="log-when">{when}</span>
+        <span>{entryWords(entry)}</span>
+        {entry.note && <span class="soft">{entry.note}</span>}
+      </div>
+      <button
+        type="button"
+        class="quiet"
+        aria-label={`Undo: ${entryWords(entry)}, ${when}`}
+        onClick={() => onUndo(entry.id)}
+      >
+        Undo
+      </button>
+    </li>
   );
 }

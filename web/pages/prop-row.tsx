@@ -12,6 +12,8 @@ type PropRowProps = {
   nextRound: string | null;
   /** With its sign, where the heading above does not already say the group. */
   withSign?: boolean;
+  /** A note said for the whole group already. */
+  saidAbove?: string | null;
 };
 
 /** How a wick is read, once per page. */
@@ -35,8 +37,10 @@ export function WickKey() {
 }
 
 /** One prop in a list: what it is, how its wick stands, and by when. */
-export function PropRow({ prop, tonight, nextRound, withSign = false }: PropRowProps) {
+export function PropRow({ prop, tonight, nextRound, withSign = false, saidAbove = null }: PropRowProps) {
   const isKnown = prop.group !== 'unknown';
+  // Beside its sign, a note says more only where something is to be done or found out.
+  const isNoted = prop.note !== saidAbove && (!withSign || prop.group === 'at-risk' || !isKnown);
   return (
     <li class="row">
       <Link path={`/props/${prop.propId}`} class="row-link">
@@ -63,7 +67,7 @@ export function PropRow({ prop, tonight, nextRound, withSign = false }: PropRowP
             <span class="row-seen">last seen {prop.lastSeen}</span>
           )}
         </span>
-        {prop.note && <span class="row-note">{prop.note}</span>}
+        {prop.note && isNoted && <span class="row-note">{prop.note}</span>}
       </Link>
     </li>
   );

@@ -7,11 +7,17 @@ import { chanceWords, degrees, hours, mah, percent } from '../words/quantity.ts'
 import { dimWords } from '../words/range.ts';
 import { dateWords, eveningOf } from '../words/time.ts';
 
-type PropSeasonProps = { forecast: PropForecast; entries: LogEntry[]; timeZone: string; tonight: string };
+type PropSeasonProps = {
+  forecast: PropForecast;
+  entries: LogEntry[];
+  timeZone: string;
+  tonight: string;
+  nextRound: string | null;
+};
 
 /** The prop's wick through the season, and its nights as a table. */
-export function PropSeason({ forecast, entries, timeZone, tonight }: PropSeasonProps) {
-  const values = seasonValues({ forecast, entries, timeZone, tonight });
+export function PropSeason({ forecast, entries, timeZone, tonight, nextRound }: PropSeasonProps) {
+  const values = seasonValues({ forecast, entries, timeZone, tonight, nextRound });
   const label = `Wick through the season: ${dimWords(forecast.dim, tonight)}. The table of nights has every number.`;
   return (
     <section class="season-section" aria-labelledby="season-title">
@@ -43,7 +49,7 @@ export function PropSeason({ forecast, entries, timeZone, tonight }: PropSeasonP
   );
 }
 
-function seasonValues({ forecast, entries, timeZone, tonight }: PropSeasonProps): SeasonValues {
+function seasonValues({ forecast, entries, timeZone, tonight, nextRound }: PropSeasonProps): SeasonValues {
   const nights = forecast.nights.map(
     (night): SeasonNight => ({
       evening: night.evening,
@@ -56,14 +62,12 @@ function seasonValues({ forecast, entries, timeZone, tonight }: PropSeasonProps)
       showNight: night.showNight,
     }),
   );
-  const marks = entries
-    .filter((entry) => entry.undoneAt === undefined)
-    .map((entry) => ({
-      evening: eveningOf(Date.parse(entry.at), timeZone),
-      mark: entry.kind === 'swap' ? ('swap' as const) : entry.seen,
-      text: `${dateWords(eveningOf(Date.parse(entry.at), timeZone))}: ${entryWords(entry)}`,
-    }));
-  return { nights, marks, tonight, nextRound: null, swapBy: forecast.swapBy };
+  const marks = entries.map((entry) => ({
+    evening: eveningOf(Date.parse(entry.at), timeZone),
+    mark: entry.kind === 'swap' ? ('swap' as const) : entry.seen,
+    text: `${dateWords(eveningOf(Date.parse(entry.at), timeZone))}: ${entryWords(entry)}`,
+  }));
+  return { nights, marks, tonight, nextRound, swapBy: forecast.swapBy };
 }
 
 function PropNights({ forecast, tonight }: { forecast: PropForecast; tonight: string }) {

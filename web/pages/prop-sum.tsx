@@ -52,9 +52,9 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
             ? 'no swap on record'
             : `fitted ${shortMomentWords(Date.parse(forecast.fittedAt), timeZone)}${forecast.usedShare === null ? '' : `; that is ${percent(forecast.usedShare)} of what it gives`}`}
         </Step>
-        <Step title="It drains at" result={`${figures(drainFactor.likely)} × the sum`}>
-          between {figures(drainFactor.low)} and {figures(drainFactor.high)} times, four times in five: from
-          what was seen so far
+        <Step title="It drains at" result={`${drainFactor.likely.toFixed(2)} × the sum`}>
+          between {drainFactor.low.toFixed(2)} and {drainFactor.high.toFixed(2)} times, four times in five:
+          from what was seen so far
         </Step>
         <Step title="So it looks dim" result={rangeWords(forecast.dim, tonight)}>
           {why.mahTonight > 0 && usableMah !== null && usedMah !== null

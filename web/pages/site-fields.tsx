@@ -1,7 +1,7 @@
 import type { NewSite, Site } from '../api/types.ts';
 import { ChoiceField, LinesField, TextField } from '../parts/field.tsx';
 import type { Form, Reader } from '../state/form.ts';
-import { readNumber } from '../words/quantity.ts';
+import { readOffsets } from '../words/quantity.ts';
 
 type Fields = Record<string, string>;
 
@@ -62,19 +62,8 @@ export const habitsOf = (read: Reader) => ({
     walkMinutes: read.number('rounds.walkMinutes'),
     cost: read.number('rounds.cost'),
   },
-  zoneOffsetsC: offsetsOf(read.optionalText('zoneOffsetsC') ?? ''),
+  zoneOffsetsC: readOffsets(read.optionalText('zoneOffsetsC') ?? ''),
 });
-
-/** 'Mill Race: -3', one a line; a line without a number is left out. */
-export function offsetsOf(text: string): Record<string, number> {
-  const offsets: Record<string, number> = {};
-  for (const line of text.split('\n')) {
-    const match = /^(.*\S)\s*[:=]\s*(\S+)$/.exec(line.trim());
-    const offsetC = match ? readNumber(match[2]!) : null;
-    if (match && offsetC !== null) offsets[match[1]!] = offsetC;
-  }
-  return offsets;
-}
 
 export const newSiteOf = (read: Reader): NewSite => ({
   ...placeOf(read),

@@ -19,7 +19,7 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
   const isRechargeable = cellTypes.find(({ id }) => id === prop.cellTypeId)?.rechargeable ?? false;
   const fresh = () => ({
     at: '',
-    state: isRechargeable ? 'charged' : 'new',
+    state: '',
     leftShare: '',
     cellTypeId: prop.cellTypeId,
     cells: String(wholeSet),
@@ -31,12 +31,13 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
   const key = useRef(onceKey());
   const { fields, faults } = form;
   const picked = cellTypes.find(({ id }) => id === fields.cellTypeId);
-  // Untouched, the moment keeps up with the clock; the list of cell types may come after the form.
+  // Untouched, the moment keeps up with the clock, and the usual state with the list of cell types.
   const at = fields.at || wallStamp(momentAt, timeZone);
+  const state = fields.state || (isRechargeable ? 'charged' : 'new');
 
   const record = async () => {
     const swap = await form.send((read) =>
-      api.recordSwap(prop.id, swapOf(read, { at, timeZone, wholeSet, momentAt }), key.current),
+      api.recordSwap(prop.id, swapOf(read, { at, state, timeZone, wholeSet, momentAt }), key.current),
     );
     if (!swap) return;
     key.current = onceKey();
@@ -56,8 +57,8 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
         <FormTrouble text={form.trouble} />
         <ChoiceField
           label="What went in"
-          value={fields.state}
-          onPick={(state) => form.set('state', state)}
+          value={state}
+          onPick={(picked) => form.set('state', picked)}
           fault={faults.state}
           options={[
             { value: 'new', words: 'new' },
@@ -65,7 +66,7 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
             { value: 'part-used', words: 'part-used' },
           ]}
         />
-        {fields.state === 'part-used' && (
+        {state === 'part-used' && (
           <TextField
             label="How much is left"
             unit="%"
@@ -141,12 +142,12 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
   );
 }
 
-type SwapContext = { at: string; timeZone: string; wholeSet: number; momentAt: number };
+type SwapContext = { at: string; state: string; timeZone: string; wholeSet: number; momentAt: number };
 
-function swapOf(read: Reader, { at, timeZone, wholeSet, momentAt }: SwapContext): NewSwap {
+function swapOf(read: Reader, { at, state, timeZone, wholeSet, momentAt }: SwapContext): NewSwap {
   const swap: NewSwap = {
     at: new Date(instantOfStamp(at, timeZone) ?? momentAt).toISOString(),
-    state: read.text('state') as NewSwap['state'],
+    state: state as NewSwap['state'],
     cellTypeId: read.text('cellTypeId'),
   };
   const left = swap.state === 'part-used' ? read.optionalNumber('leftShare') : undefined;

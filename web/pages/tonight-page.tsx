@@ -151,16 +151,23 @@ function Groups({ forecast, tonight }: { forecast: SiteForecast; tonight: string
       {GROUPS.map((group) => {
         const props = ofGroup(forecast.props, group).toSorted(byUrgency);
         if (props.length === 0) return null;
+        const shared = sharedNote(props);
         return (
           <section key={group} id={group} class={`group group-${group}`} aria-labelledby={`${group}-title`}>
             <h2 id={`${group}-title`}>
               {sign(group)} {GROUP_WORDS[group].title} <span class="group-count">{props.length}</span>
             </h2>
-            <p class="soft">{GROUP_WORDS[group].about}</p>
+            <p class="soft">{shared ?? GROUP_WORDS[group].about}</p>
             <Foldable count={group === 'fine' ? props.length : 0}>
               <ul class="rows">
                 {props.map((prop) => (
-                  <PropRow key={prop.propId} prop={prop} tonight={tonight} nextRound={forecast.nextRound} />
+                  <PropRow
+                    key={prop.propId}
+                    prop={prop}
+                    tonight={tonight}
+                    nextRound={forecast.nextRound}
+                    saidAbove={shared}
+                  />
                 ))}
               </ul>
             </Foldable>
@@ -169,6 +176,13 @@ function Groups({ forecast, tonight }: { forecast: SiteForecast; tonight: string
       })}
     </>
   );
+}
+
+/** A note that most of a group share is said once, above them. */
+function sharedNote(props: SiteForecastProp[]): string | null {
+  const note = props[0]?.note ?? null;
+  const sharing = props.filter((prop) => prop.note === note).length;
+  return sharing > 1 && sharing > props.length / 2 ? note : null;
 }
 
 /** A long list nobody has to act on stays folded, so that the rest is in sight. */

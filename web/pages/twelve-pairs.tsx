@@ -1,4 +1,5 @@
 import type { Form } from '../state/form.ts';
+import { splitNumbers } from '../words/quantity.ts';
 import { MONTHS } from '../words/time.ts';
 
 type Fields = Record<string, string>;
@@ -70,11 +71,4 @@ function faultPlace(field: string): string {
   const [kind, index] = field.split('.');
   const words = kind === 'monthlyMinC' ? 'minimum' : 'maximum';
   return index === undefined ? `All of the ${words} row` : `${MONTHS[Number(index)]} ${words}`;
-}
-
-/** Numbers out of a pasted row: parted by tabs, blanks or semicolons, or by commas where nothing else parts them. */
-export function splitNumbers(text: string): string[] {
-  const plain = text.trim().replaceAll('\u2212', '-');
-  const parted = /[\s;]/.test(plain) ? plain.split(/[\s;]+/) : plain.split(',');
-  return parted.map((part) => part.replace(/,$/, '')).filter((part) => part !== '');
 }

@@ -2,7 +2,7 @@ import { type ComponentChildren, createContext } from 'preact';
 import { useContext, useEffect, useMemo, useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
 import type { Health, Problem, Site } from '../api/types.ts';
-import { nightMeant } from '../words/time.ts';
+import { eveningAhead } from '../words/time.ts';
 import { now } from './clock.ts';
 import { useRead } from './read.ts';
 import { addressOf, type Place, readPlace } from './route.ts';
@@ -68,7 +68,7 @@ export function ShellFrame({ children }: { children: ComponentChildren }) {
       problem: sites.problem ?? health.problem,
       asOf: place.asOf,
       momentAt,
-      tonight: nightMeant(momentAt, site?.timeZone ?? 'UTC'),
+      tonight: eveningAhead(momentAt, site?.timeZone ?? 'UTC'),
       reload: async () => {
         await Promise.all([health.again(), sites.again()]);
       },

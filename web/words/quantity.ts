@@ -43,3 +43,21 @@ export function readNumber(text: string): number | null {
   if (!/^[+-]?(\d+\.?\d*|\.\d+)$/.test(plain)) return null;
   return Number(plain);
 }
+
+/** Numbers out of a pasted row: parted by tabs, blanks or semicolons, or by commas where nothing else parts them. */
+export function splitNumbers(text: string): string[] {
+  const plain = text.trim().replaceAll('\u2212', '-');
+  const parted = /[\s;]/.test(plain) ? plain.split(/[\s;]+/) : plain.split(',');
+  return parted.map((part) => part.replace(/,$/, '')).filter((part) => part !== '');
+}
+
+/** 'Mill Race: -3', one a line; a line without a number is left out. */
+export function readOffsets(text: string): Record<string, number> {
+  const offsets: Record<string, number> = {};
+  for (const line of text.split('\n')) {
+    const match = /^(.*\S)\s*[:=]\s*(\S+)$/.exec(line.trim());
+    const offsetC = match ? readNumber(match[2]!) : null;
+    if (match && offsetC !== null) offsets[match[1]!] = offsetC;
+  }
+  return offsets;
+}

@@ -32,3 +32,14 @@ export function swapByWords(swapBy: string | null, tonight: string): string {
   if (swapBy === tonight) return 'swap by tonight';
   return `swap by ${dateWords(swapBy)}`;
 }
+
+/**
+ * How a deed moved the date: 'Dim: was Thu 22 – Sat 24 Oct, now Mon 2 Nov or later.'
+ * @param moved the ranges before and after; null = there was nothing to reckon with
+ */
+export function movedWords(moved: { before: Range | null; after: Range | null; tonight: string }): string {
+  const { before, after, tonight } = moved;
+  const now = after ? rangeWords(after, tonight) : 'not known';
+  const was = before ? rangeWords(before, tonight) : 'not known';
+  return was === now ? `Dim: still ${now}.` : `Dim: was ${was}, now ${now}.`;
+}

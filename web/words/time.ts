@@ -91,7 +91,7 @@ export function eveningOf(at: number, timeZone: string): string {
  * The night people mean by "tonight": the one that is on, or from six in the morning the one to come. An evening
  * lasts to the next noon, but nobody at breakfast calls last night tonight.
  */
-export function nightMeant(at: number, timeZone: string): string {
+export function eveningAhead(at: number, timeZone: string): string {
   const evening = eveningOf(at, timeZone);
   const { hour } = wallOf(at, timeZone);
   return hour >= 6 && hour < 12 ? addDays(evening, 1) : evening;
