@@ -1,10 +1,10 @@
 import { DAY_MS, eveningOf, eveningsBetween, type Instant, isEvening } from '../model/evening.ts';
 import type { Prop } from '../model/prop.ts';
+import { yearFaults } from './known-years.ts';
 import type { Fault } from './refusal.ts';
 
 // Phones may run ahead, and a zone may be set wrong; more than a day is another date.
 const FURTHEST_AHEAD_MS = DAY_MS;
-const EARLIEST_AT = Date.UTC(2000, 0, 1);
 // A slip of day and month is worth asking about when it leads to a recent date.
 const RECENT_EVENINGS = 60;
 
@@ -16,10 +16,8 @@ const RECENT_EVENINGS = 60;
  */
 export function momentFaults(at: Instant, options: { now: Instant; timeZone: string }): Fault[] {
   const { now, timeZone } = options;
-  if (at < EARLIEST_AT) {
-    const message = `${dateOf(at, timeZone)} is before the year 2000. Is the clock of the phone or computer set?`;
-    return [{ field: 'at', message }];
-  }
+  const unknown = yearFaults(at, 'at');
+  if (unknown.length > 0) return unknown;
   if (at <= now + FURTHEST_AHEAD_MS) return [];
   const date = dateOf(at, timeZone);
   const today = dateOf(now, timeZone);

@@ -3,6 +3,7 @@ import type { CellType } from '../model/cell-type.ts';
 import type { Load } from '../model/load.ts';
 import type { Prop } from '../model/prop.ts';
 import type { Switching } from '../model/switching.ts';
+import { yearFaults } from './known-years.ts';
 import type { Fault } from './refusal.ts';
 
 // A fresh set may read a little above its curve; beyond this no set of the kind can be.
@@ -72,6 +73,8 @@ function switchingFaults(switching: Switching): Fault[] {
     const message = `On and off are both ${switching.onAt}. For a light that is never off use the kind "always"; otherwise give the time it goes off.`;
     return [{ field: 'switching.offAt', message }];
   }
+  if (switching.kind === 'interval-timer')
+    return switching.setAt === undefined ? [] : yearFaults(switching.setAt, 'switching.setAt');
   if (switching.kind !== 'light-sensor') return [];
   const faults: Fault[] = [];
   for (const way of ['on', 'off'] as const) {

@@ -6,6 +6,7 @@ import {
   standardOffsetHours,
 } from '../model/evening.ts';
 import type { Site } from '../model/site.ts';
+import { eveningFaults } from './known-years.ts';
 import { didYouMean, nearNames } from './near-names.ts';
 import type { Fault } from './refusal.ts';
 
@@ -67,17 +68,6 @@ export function runOfEveningsFaults(
     return [{ field: fields[1], message }];
   }
   return [];
-}
-
-/**
- * Says when a text is no date of the calendar.
- * @param evening what was given
- * @param field how the asker calls it
- */
-export function eveningFaults(evening: string, field: string): Fault[] {
-  if (isEvening(evening)) return [];
-  const message = `${JSON.stringify(evening.slice(0, 20))} is no date of the calendar between 1900 and 2199. Dates are written year, month, day: '2026-10-25'.`;
-  return [{ field, message }];
 }
 
 function zoneFaults(site: Site): Fault[] {

@@ -1,10 +1,10 @@
-import { type Evening, type Instant, isEvening } from '../model/evening.ts';
+import type { Evening, Instant } from '../model/evening.ts';
 import type { ShowNight } from '../model/switching.ts';
 import { listShowNights, replaceShowNights, type StoredShowNight } from '../store/show-nights.ts';
 import { raiseRevision } from '../store/sites.ts';
-import { eveningFaults } from './check-site.ts';
 import type { Deps } from './deps.ts';
 import { siteOf } from './find-site.ts';
+import { eveningFaults } from './known-years.ts';
 import { type Fault, refuseFaults } from './refusal.ts';
 
 /**
@@ -34,7 +34,8 @@ export function setShowNights(
 
 function nightFaults(night: ShowNight, among: { index: number; nights: ShowNight[] }): Fault[] {
   const at = `${among.index}`;
-  if (!isEvening(night.evening)) return eveningFaults(night.evening, `${at}.evening`);
+  const unknown = eveningFaults(night.evening, `${at}.evening`);
+  if (unknown.length > 0) return unknown;
   const first = among.nights.findIndex((other) => other.evening === night.evening);
   if (first !== among.index) {
     const message = `${night.evening} is listed twice, at places ${first + 1} and ${among.index + 1}. Keep one: an evening has one opening time.`;

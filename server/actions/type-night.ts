@@ -2,9 +2,9 @@ import type { Evening } from '../model/evening.ts';
 import type { TypedNight } from '../model/weather.ts';
 import { raiseRevision } from '../store/sites.ts';
 import { removeTypedNight, saveTypedNight } from '../store/weather.ts';
-import { eveningFaults } from './check-site.ts';
 import type { Deps } from './deps.ts';
 import { siteOf } from './find-site.ts';
+import { eveningFaults } from './known-years.ts';
 import { type Fault, refuseFaults } from './refusal.ts';
 
 /**

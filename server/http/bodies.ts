@@ -1,5 +1,7 @@
 import type { NewProp as NewPropInput } from '../actions/add-prop.ts';
 import type { PropChanges as PropChangesInput } from '../actions/change-prop.ts';
+import { yearFaults } from '../actions/known-years.ts';
+import { refuseFaults } from '../actions/refusal.ts';
 import { check } from '../model/check.ts';
 import { type Instant, parseInstant } from '../model/evening.ts';
 import type { Switching as SwitchingValue } from '../model/switching.ts';
@@ -17,7 +19,10 @@ export function instantOf(text: string): Instant {
 
 /** The moment a read is asked as of; nothing when it is not said. */
 export function asOfIn(query: { asOf?: string }): { asOf?: Instant } {
-  return query.asOf === undefined ? {} : { asOf: instantOf(query.asOf) };
+  if (query.asOf === undefined) return {};
+  const asOf = instantOf(query.asOf);
+  refuseFaults(yearFaults(asOf, 'asOf'));
+  return { asOf };
 }
 
 /** A new prop as the actions take it. */
