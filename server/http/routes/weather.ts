@@ -25,7 +25,7 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
   app.post<OfSite & { Querystring: WeatherQuery }>(
     '/api/sites/:siteId/weather',
     {
-      bodyLimit: FILE_LIMIT_BYTES + 4096,
+      bodyLimit: FILE_LIMIT_BYTES,
       config: { reads: ['text/csv', FORM] },
       schema: {
         operationId: 'importWeather',
@@ -73,8 +73,10 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
 
 async function fileIn(request: FastifyRequest): Promise<Buffer> {
   if (Buffer.isBuffer(request.body)) return request.body;
-  const file = request.isMultipart() ? await request.file() : undefined;
-  if (file) return file.toBuffer();
+  let file: Buffer | undefined;
+  // To the end, so that a second file is noticed.
+  if (request.isMultipart()) for await (const part of request.files()) file = await part.toBuffer();
+  if (file) return file;
   throw new HttpProblem(
     'invalid',
     'No file came. Send it as text/csv in the body, or as the one file of a form.',
