@@ -129,14 +129,19 @@ export function usableShares(set: CellSet, demand: Demand, volts: number): Usabl
   return { ...shares, coldShareAt, usableMahAt: (tempC) => at20CMah * coldShareAt(tempC) };
 }
 
-/** Charge a set loses by itself in a stretch, mAh. `ageDays`: since it was new or charged; `tempC`: mean of the stretch. */
-export function selfDischargeMah(
-  set: CellSet,
-  over: { ageDays: number; days: number; tempC: number },
-): number {
+/**
+ * Charge a set loses by itself in a day, mAh, by days since it was new or charged and the day's mean temperature, °C.
+ * Source: makers' shelf figures by chemistry, and their rise with temperature (Q10); see `cell-kinds.ts`.
+ */
+export function dailyLossOf(set: CellSet): (ageDays: number, tempC: number) => number {
   const { steps, q10 } = CELL_KINDS[set.type.kind].selfDischarge;
-  const step = steps.find(({ throughDays }) => over.ageDays < throughDays) ?? steps[steps.length - 1]!;
-  return labelMah(set) * step.sharePerDay * over.days * q10 ** ((over.tempC - 20) / 10);
+  const perK = Math.log(q10) / 10;
+  const capacityMah = labelMah(set);
+  return (ageDays, tempC) => {
+    let k = 0;
+    while (k < steps.length - 1 && ageDays >= steps[k]!.throughDays) k += 1;
+    return capacityMah * steps[k]!.sharePerDay * Math.exp(perK * (tempC - 20));
+  };
 }
 
 /** Relative standard deviation of the usable charge that comes from the cold table itself, at `tempC`. */

@@ -21,11 +21,14 @@ export type SetCourse = {
   usedAtStartMah: number;
   /** Charge it loses by itself in one evening, by evenings since it went in. */
   selfDischargeMah(evening: number, tempC: number): number;
+  /** Standard deviation of the logarithm of the drain factor: how far apart factors are followed. */
+  spread: number;
 };
 
 /** What happens on each evening since the set went in, by the likely course and by drain factor. */
 export type Depletion = {
   count: number;
+  limits: LimitTables;
   litHours: Float64Array;
   /** Used at the end of the evening if the sum is right, mAh; it stands still while the prop is dark. */
   usedMah: Float64Array;
@@ -54,9 +57,12 @@ const NOT_LIT = 4;
 /** A night this mild is nothing to blame the cold for. Common practice, no source. */
 export const MILD_C = 10;
 
-/** Drain factors followed side by side: 25, evenly spaced in the logarithm, from a quarter to four times the sum. */
-const FACTORS = Float64Array.from({ length: 25 }, (_, g) => 2 ** ((g - 12) / 6));
-const LIKELY = 12;
+/**
+ * Drain factors followed side by side: nine, one spread of the belief apart. Beyond four spreads a threshold decides
+ * nothing that is ever shown.
+ */
+const COUNT = 9;
+const LIKELY = 4;
 
 /**
  * Follows a set through its evenings for all drain factors at once.
@@ -67,46 +73,72 @@ const LIKELY = 12;
  * evening there is one factor below which it stays bright throughout: the threshold. Between the followed factors it
  * is found along the slope of the margin X - x, which is exact as long as the prop has not been dark before.
  *
- * Ours; the model is that of an hour-by-hour sum, against which it is checked (test/bench). Moments looked at are
- * those of the schedule, at most four hours apart.
+ * Ours; the model is that of an hour-by-hour sum, against which it is checked (test/model, test/bench). Moments looked
+ * at are those of the schedule, at most four hours apart.
  */
 export function deplete(set: SetCourse): Depletion {
   const count = set.schedule.count - set.start;
   check(count > 0, 'the set goes in after the season');
-  const limits = limitTables(set);
-  const arrays = () => new Float64Array(count);
+  const row = rowsOf(7, count);
   const out: Depletion = {
     count,
-    litHours: arrays(),
-    usedMah: arrays(),
-    eveningMah: arrays(),
-    decidingC: arrays(),
-    brightBelow: arrays(),
-    litBelow: arrays(),
-    brightShare: arrays().fill(1),
+    limits: limitTables(set),
+    litHours: row(0),
+    usedMah: row(1),
+    eveningMah: row(2),
+    decidingC: row(3),
+    brightBelow: row(4),
+    litBelow: row(5),
+    brightShare: row(6).fill(1),
     likely: new Uint8Array(count),
     dimByCold: new Uint8Array(count),
   };
-  const state = new Float64Array(FACTORS.length).fill(set.drawDown.reckonedOf(set.usedAtStartMah));
-  const slope = new Float64Array(FACTORS.length);
+  const followed = followedFrom(set.drawDown.reckonedOf(set.usedAtStartMah), set.spread);
   for (let n = 0; n < count; n += 1) {
     const schedule = n === 0 ? set.firstEvening : set.schedule;
     const i = n === 0 ? 0 : set.start + n;
-    const nightC = schedule.nightC[i]! + set.offsetC;
-    const likelyMah = state[LIKELY]!;
     const litMah = set.meanMa * schedule.litHours[i]!;
     const otherMah =
       set.standbyMa * (schedule.poweredHours[i]! - schedule.litHours[i]!) +
       set.mahPerTrip * schedule.trips[i]! +
-      set.selfDischargeMah(n, nightC);
-    const drawShare = set.drawDown.drawShareAt(likelyMah);
-    const eveningMah = litMah + otherMah / drawShare;
-    followEvening({ set, schedule, i, n, limits, state, slope, out, eveningMah, litMah });
+      set.selfDischargeMah(n, schedule.nightC[i]! + set.offsetC);
+    const drawShare = set.drawDown.drawShareAt(followed.x[LIKELY]!);
+    followEvening({ set, schedule, i, n, followed, out, litMah, otherMah: otherMah / drawShare });
     out.litHours[n] = schedule.litHours[i]!;
     out.eveningMah[n] = litMah * drawShare + otherMah;
-    out.usedMah[n] = set.drawDown.usedOf(state[LIKELY]!);
+    out.usedMah[n] = set.drawDown.usedOf(followed.x[LIKELY]!);
   }
   return out;
+}
+
+/** Rows of numbers in one piece of memory: a site has thousands of them, and each piece costs. */
+function rowsOf(rows: number, length: number): (index: number) => Float64Array {
+  const block = new Float64Array(rows * length);
+  return (index) => block.subarray(index * length, (index + 1) * length);
+}
+
+/** By drain factor: reckoned charge and how fast it rises with the factor; and of one evening the tightest margins. */
+type Followed = {
+  factor: Float64Array;
+  x: Float64Array;
+  slope: Float64Array;
+  dimMargin: Float64Array;
+  dimSlope: Float64Array;
+  darkMargin: Float64Array;
+  darkSlope: Float64Array;
+};
+
+function followedFrom(startMah: number, spread: number): Followed {
+  const row = rowsOf(7, COUNT);
+  return {
+    factor: row(6).map((_, g) => Math.exp(spread * (g - LIKELY))),
+    x: row(0).fill(startMah),
+    slope: row(1),
+    dimMargin: row(2),
+    dimSlope: row(3),
+    darkMargin: row(4),
+    darkSlope: row(5),
+  };
 }
 
 type EveningWork = {
@@ -114,62 +146,30 @@ type EveningWork = {
   schedule: Schedule;
   i: number;
   n: number;
-  limits: LimitTables;
-  /** Reckoned charge by factor, and how fast it rises with the factor. */
-  state: Float64Array;
-  slope: Float64Array;
+  followed: Followed;
   out: Depletion;
-  eveningMah: number;
+  /** Reckoned charge of the evening: while lit, and the rest. */
   litMah: number;
+  otherMah: number;
 };
 
-/** The tightest look of an evening, by factor: the margin left and how fast it falls with the factor. */
-type Tightest = { margin: Float64Array; slope: Float64Array };
-const tightest = (): Tightest => ({
-  margin: new Float64Array(FACTORS.length),
-  slope: new Float64Array(FACTORS.length),
-});
-/** Reused from evening to evening, since nothing keeps them. */
-const toDim = tightest();
-const toDark = tightest();
-
-function keepTightest(kept: Tightest, g: number, look: { margin: number; slope: number }): void {
-  if (look.margin >= kept.margin[g]!) return;
-  kept.margin[g] = look.margin;
-  kept.slope[g] = look.slope;
-}
-
 function followEvening(work: EveningWork): void {
-  const { set, schedule, i, n, limits, state, slope, out } = work;
+  const { set, schedule, i, n, followed, out, otherMah } = work;
   const firstCheck = schedule.checkFrom[i]!;
   const endCheck = schedule.checkFrom[i + 1]!;
-  const otherMah = work.eveningMah - work.litMah;
-  toDim.margin.fill(Infinity);
-  toDark.margin.fill(Infinity);
+  followed.dimMargin.fill(Infinity);
+  followed.darkMargin.fill(Infinity);
   out.decidingC[n] = schedule.nightC[i]! + set.offsetC;
   let doneMah = 0;
   let least = Infinity;
   let before = Infinity;
   for (let c = firstCheck; c < endCheck; c += 1) {
     const airC = schedule.checkAirC[c]! + set.offsetC;
-    const dimLimit = limits.at(limits.dim, airC);
-    const darkLimit = limits.at(limits.dark, airC);
+    const dimLimit = limitAt(out.limits.dim, airC);
     const byNowMah = set.meanMa * schedule.checkLitHours[c]! + otherMah * schedule.checkGoneShare[c]!;
     const stepMah = byNowMah - doneMah;
-    const margin = dimLimit - state[LIKELY]! - stepMah;
-    for (let g = 0; g < FACTORS.length; g += 1) {
-      const reached = state[g]! + FACTORS[g]! * stepMah;
-      const rise = slope[g]! + stepMah;
-      keepTightest(toDim, g, { margin: dimLimit - reached, slope: rise });
-      keepTightest(toDark, g, { margin: darkLimit - reached, slope: rise });
-      if (reached <= darkLimit) {
-        state[g] = reached;
-        slope[g] = rise;
-      } else if (state[g]! < darkLimit) {
-        state[g] = darkLimit;
-        slope[g] = 0;
-      }
-    }
+    const margin = dimLimit - followed.x[LIKELY]! - stepMah;
+    look(followed, { stepMah, dimLimit, darkLimit: limitAt(out.limits.dark, airC) });
     if (margin < least) {
       least = margin;
       out.decidingC[n] = airC;
@@ -180,16 +180,47 @@ function followEvening(work: EveningWork): void {
     before = margin;
     doneMah = byNowMah;
   }
-  const restMah = work.eveningMah - doneMah;
-  for (let g = 0; g < FACTORS.length; g += 1) {
-    if (toDark.margin[g]! < 0) continue;
-    state[g] = state[g]! + FACTORS[g]! * restMah;
-    slope[g] = slope[g]! + restMah;
-  }
-  out.brightBelow[n] = thresholdOf(toDim);
-  out.litBelow[n] = thresholdOf(toDark);
+  takeRest(followed, work.litMah + otherMah - doneMah);
+  out.brightBelow[n] = thresholdOf(followed.factor, followed.dimMargin, followed.dimSlope);
+  out.litBelow[n] = thresholdOf(followed.factor, followed.darkMargin, followed.darkSlope);
   if (endCheck === firstCheck) out.likely[n] = NOT_LIT;
   else tellLikely(work, least);
+}
+
+/** One look at every followed factor: what it has reached, how much is left, and where the limit stops it. */
+function look(
+  { factor, x, slope, dimMargin, dimSlope, darkMargin, darkSlope }: Followed,
+  at: { stepMah: number; dimLimit: number; darkLimit: number },
+): void {
+  const { stepMah, dimLimit, darkLimit } = at;
+  for (let g = 0; g < COUNT; g += 1) {
+    const reached = x[g]! + factor[g]! * stepMah;
+    const rise = slope[g]! + stepMah;
+    if (dimLimit - reached < dimMargin[g]!) {
+      dimMargin[g] = dimLimit - reached;
+      dimSlope[g] = rise;
+    }
+    if (darkLimit - reached < darkMargin[g]!) {
+      darkMargin[g] = darkLimit - reached;
+      darkSlope[g] = rise;
+    }
+    if (reached <= darkLimit) {
+      x[g] = reached;
+      slope[g] = rise;
+    } else if (x[g]! < darkLimit) {
+      x[g] = darkLimit;
+      slope[g] = 0;
+    }
+  }
+}
+
+/** What an evening takes after its last look, where the prop was lit to the end. */
+function takeRest({ factor, x, slope, darkMargin }: Followed, restMah: number): void {
+  for (let g = 0; g < COUNT; g += 1) {
+    if (darkMargin[g]! < 0) continue;
+    x[g] = x[g]! + factor[g]! * restMah;
+    slope[g] = slope[g]! + restMah;
+  }
 }
 
 /** Share of the evening's looks that had passed when the margin ran out between look c - 1 and look c. */
@@ -205,12 +236,14 @@ function brightShareAt(
   return (from + (schedule.checkLitHours[at.c]! - from) * part) / whole;
 }
 
-function tellLikely({ limits, state, out, n, eveningMah }: EveningWork, least: number): void {
+function tellLikely({ followed, out, n, litMah, otherMah }: EveningWork, least: number): void {
+  const { limits } = out;
   const cold = out.decidingC[n]! < MILD_C;
-  const atMah = limits.at(limits.dim, out.decidingC[n]!) - least;
-  out.dimByCold[n] = least < 0 && cold && atMah + eveningMah <= limits.at(limits.dim, MILD_C) ? 1 : 0;
-  const darkByCold = cold && state[LIKELY]! + eveningMah <= limits.at(limits.dark, MILD_C);
-  if (toDark.margin[LIKELY]! < 0) out.likely[n] = darkByCold ? DARK_COLD : DARK_USED_UP;
+  const sparedMah = litMah + otherMah;
+  const atMah = limitAt(limits.dim, out.decidingC[n]!) - least;
+  out.dimByCold[n] = least < 0 && cold && atMah + sparedMah <= limitAt(limits.dim, MILD_C) ? 1 : 0;
+  const darkByCold = cold && followed.x[LIKELY]! + sparedMah <= limitAt(limits.dark, MILD_C);
+  if (followed.darkMargin[LIKELY]! < 0) out.likely[n] = darkByCold ? DARK_COLD : DARK_USED_UP;
   else out.likely[n] = least < 0 ? DIM : BRIGHT;
 }
 
@@ -218,34 +251,33 @@ function tellLikely({ limits, state, out, n, eveningMah }: EveningWork, least: n
  * Factor at which the margin runs out: from the highest followed factor that still has one, along its slope. Exact
  * as long as a prop between that factor and the threshold has been dark on the same evenings.
  */
-function thresholdOf({ margin, slope }: Tightest): number {
-  const last = FACTORS.length - 1;
+function thresholdOf(factor: Float64Array, margin: Float64Array, slope: Float64Array): number {
   if (margin[0] === Infinity) return Infinity;
   let g = 0;
-  while (g < last && margin[g + 1]! >= 0) g += 1;
+  while (g < COUNT - 1 && margin[g + 1]! >= 0) g += 1;
   if (slope[g]! <= 0) return margin[g]! >= 0 ? Infinity : 0;
-  return Math.max(0, FACTORS[g]! + margin[g]! / slope[g]!);
+  return Math.max(0, factor[g]! + margin[g]! / slope[g]!);
 }
 
-type LimitTables = { dim: Float64Array; dark: Float64Array; at(table: Float64Array, tempC: number): number };
+/** Reckoned charge at which a set is dim, and dark, by temperature. Ask with `limitAt`. */
+export type LimitTables = { dim: Float64Array; dark: Float64Array };
 
 const TABLE_FROM_C = -40;
 const TABLE_STEP_C = 2;
 const TABLE_SIZE = 46;
 
-/** Reckoned charge at which the set is dim, and dark, every 2 K: the steps fall on the corners of the cold tables. */
+/** A limit every 2 K: the steps fall on the corners of the cold tables. */
 function limitTables(set: SetCourse): LimitTables {
   const table = (usable: UsableShares) =>
     Float64Array.from({ length: TABLE_SIZE }, (_, k) =>
       set.drawDown.reckonedOf(usable.usableMahAt(TABLE_FROM_C + k * TABLE_STEP_C)),
     );
-  return {
-    dim: table(set.dim),
-    dark: table(set.dark),
-    at(values, tempC) {
-      const place = Math.min(TABLE_SIZE - 1.001, Math.max(0, (tempC - TABLE_FROM_C) / TABLE_STEP_C));
-      const k = Math.floor(place);
-      return values[k]! + (values[k + 1]! - values[k]!) * (place - k);
-    },
-  };
+  return { dim: table(set.dim), dark: table(set.dark) };
+}
+
+/** A limit at a temperature, °C, held at the table's ends (-40 and 50). */
+export function limitAt(table: Float64Array, tempC: number): number {
+  const place = Math.min(TABLE_SIZE - 1.001, Math.max(0, (tempC - TABLE_FROM_C) / TABLE_STEP_C));
+  const k = Math.floor(place);
+  return table[k]! + (table[k + 1]! - table[k]!) * (place - k);
 }

@@ -1,15 +1,8 @@
 import { type Belief, chanceBelow, priorBelief } from './belief.ts';
-import {
-  type CellSet,
-  coldSpread,
-  labelMah,
-  selfDischargeMah,
-  type UsableShares,
-  usableShares,
-} from './cell.ts';
+import { type CellSet, coldSpread, dailyLossOf, labelMah, type UsableShares, usableShares } from './cell.ts';
 import { CELL_KINDS } from './cell-kinds.ts';
 import type { CellType } from './cell-type.ts';
-import { type Depletion, deplete } from './depletion.ts';
+import { type Depletion, deplete, limitAt } from './depletion.ts';
 import { drawDownOf } from './draw-down.ts';
 import { addEvenings, type Evening, eveningOf, eveningsBetween, type Instant } from './evening.ts';
 import type { EveningRange } from './forecast.ts';
@@ -97,6 +90,12 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
   const dimShares = usableShares(cellSet, demand, prop.dimVolts);
   const darkShares = usableShares(cellSet, demand, Math.min(stopVolts, prop.dimVolts));
   const offsetC = question.zoneOffsetC + (prop.offsetC ?? 0);
+  const belief = priorBelief({
+    kind: type.kind,
+    load,
+    leftShare: leftAtStartShare,
+    leftShareKnown: set.leftShare !== null,
+  });
   const depletion = deplete({
     schedule,
     start,
@@ -109,13 +108,8 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
     standbyMa: load.standbyMa,
     mahPerTrip,
     usedAtStartMah: (1 - leftAtStartShare) * labelMah(cellSet) * set.healthShare,
-    selfDischargeMah: (evening, tempC) => selfDischargeMah(cellSet, { ageDays: evening, days: 1, tempC }),
-  });
-  const belief = priorBelief({
-    kind: type.kind,
-    load,
-    leftShare: leftAtStartShare,
-    leftShareKnown: set.leftShare !== null,
+    selfDischargeMah: dailyLossOf(cellSet),
+    spread: belief.spread,
   });
   const defaults = [
     ...load.defaults,
@@ -187,20 +181,16 @@ function startedBy({ switching }: Prop, set: SetInUse): { switching: Switching; 
  * The current at which a set's charge is mostly taken, mA: each part of a season's draw weighted by its charge.
  * Ours: a trip prop's rate is that of its runs, not of the hours it waits.
  */
-function typicalCurrentMa(prop: Prop, load: ReckonedLoad, schedule: Schedule): number {
-  const sum = (values: Float64Array) => values.reduce((total, value) => total + value, 0);
-  const litHours = sum(schedule.litHours);
+function typicalCurrentMa(prop: Prop, load: ReckonedLoad, { total }: Schedule): number {
   const meanMa = load.meanMa ?? 0;
+  const { runMa = 0, seconds = 0 } = prop.trips ?? {};
   const parts = [
-    { ma: meanMa, mah: meanMa * litHours },
-    { ma: load.standbyMa, mah: load.standbyMa * (sum(schedule.poweredHours) - litHours) },
-    {
-      ma: prop.trips?.runMa ?? 0,
-      mah: (sum(schedule.trips) * (prop.trips?.runMa ?? 0) * (prop.trips?.seconds ?? 0)) / 3600,
-    },
+    { ma: meanMa, mah: meanMa * total.litHours },
+    { ma: load.standbyMa, mah: load.standbyMa * (total.poweredHours - total.litHours) },
+    { ma: runMa, mah: (total.trips * runMa * seconds) / 3600 },
   ];
-  const totalMah = parts.reduce((total, { mah }) => total + mah, 0);
-  return totalMah > 0 ? parts.reduce((total, { ma, mah }) => total + ma * mah, 0) / totalMah : meanMa;
+  const totalMah = parts.reduce((sum, { mah }) => sum + mah, 0);
+  return totalMah > 0 ? parts.reduce((sum, { ma, mah }) => sum + ma * mah, 0) / totalMah : meanMa;
 }
 
 /** Thresholds this far from the likely draw are certain whatever the night: e to the 6th spread. */
@@ -217,22 +207,22 @@ function chancesOf(of: Omit<PropProjection, 'chanceBright' | 'chanceLit'>) {
   const chanceBright = new Float64Array(depletion.count);
   const chanceLit = new Float64Array(depletion.count);
   const certain = Math.exp(CERTAIN_SPREADS * Math.hypot(belief.spread, WIDEST_THRESHOLD_SPREAD));
-  const chanceOn = (n: number, threshold: number, shares: UsableShares) => {
+  const chanceOn = (n: number, threshold: number, limit: Float64Array) => {
     if (threshold > certain) return 1;
     if (threshold < 1 / certain) return 0;
     const tempC = depletion.decidingC[n]!;
     const sigmaC = schedule.nightSigmaC[start + n]!;
-    const colder = shares.coldShareAt(tempC - sigmaC);
-    const milder = shares.coldShareAt(tempC + sigmaC);
+    const colder = limitAt(limit, tempC - sigmaC);
+    const milder = limitAt(limit, tempC + sigmaC);
     const byWeather = milder > 0 ? (milder - colder) / (milder + colder) : 0;
     const spread = Math.min(WIDEST_THRESHOLD_SPREAD, Math.hypot(byWeather, coldSpread(cellSet, tempC)));
     return chanceBelow(belief, threshold, spread);
   };
   let sofar = 1;
   for (let n = 0; n < depletion.count; n += 1) {
-    if (sofar > 0) sofar = Math.min(sofar, chanceOn(n, depletion.brightBelow[n]!, of.dimShares));
+    if (sofar > 0) sofar = Math.min(sofar, chanceOn(n, depletion.brightBelow[n]!, depletion.limits.dim));
     chanceBright[n] = sofar;
-    chanceLit[n] = Math.max(sofar, chanceOn(n, depletion.litBelow[n]!, of.darkShares));
+    chanceLit[n] = Math.max(sofar, chanceOn(n, depletion.litBelow[n]!, depletion.limits.dark));
   }
   return { chanceBright, chanceLit };
 }

@@ -17,22 +17,24 @@ export type Season = {
 export type Schedule = {
   from: Evening;
   count: number;
-  litHours: Float64Array;
+  litHours: number[];
   /** Hours of the evening during which the set is in. */
-  poweredHours: Float64Array;
-  trips: Float64Array;
-  showNight: Uint8Array;
+  poweredHours: number[];
+  trips: number[];
+  showNight: boolean[];
+  /** Of all its evenings together. */
+  total: { litHours: number; poweredHours: number; trips: number };
   /**
    * Moments at which the set must still hold: `checkFrom[n]` up to `checkFrom[n + 1]` belong to evening n.
    * With each the lit hours so far, the share of the evening gone and the air, °C.
    */
-  checkFrom: Uint32Array;
-  checkLitHours: Float64Array;
-  checkGoneShare: Float64Array;
-  checkAirC: Float64Array;
+  checkFrom: number[];
+  checkLitHours: number[];
+  checkGoneShare: number[];
+  checkAirC: number[];
   /** Mean air from sunset to sunrise, and its spread. */
-  nightC: Float64Array;
-  nightSigmaC: Float64Array;
+  nightC: number[];
+  nightSigmaC: number[];
 };
 
 /** A lit spell is looked at this often at least: air changes little within it, and the coldest hour is not missed. */
@@ -47,56 +49,62 @@ export function scheduleOf(
   season: Season,
   of: { switching: Switching; trips: Trips | undefined; from: Evening; through: Evening; since: Instant },
 ): Schedule {
-  const evenings = eveningsFrom(of.from, of.through);
-  const checkFrom = new Uint32Array(evenings.length + 1);
-  const checkLitHours: number[] = [];
-  const checkGoneShare: number[] = [];
-  const checkAirC: number[] = [];
-  const perEvening = () => new Float64Array(evenings.length);
-  const schedule = {
-    litHours: perEvening(),
-    poweredHours: perEvening(),
-    trips: perEvening(),
-    showNight: new Uint8Array(evenings.length),
-    nightC: perEvening(),
-    nightSigmaC: perEvening(),
-  };
-  evenings.forEach((evening, n) => {
-    const showNight = season.showNights.get(evening) ?? null;
-    const on = showNight !== null && !showNight.calledOff;
-    const about = { evening, place: season.place, showNight, poweredSinceAt: of.since };
-    const lit = litEvening(of.switching, about);
-    const span = eveningSpan(evening, season.place.timeZone);
-    const poweredFrom = Math.max(span.startAt, of.since);
-    const weather = eveningWeather(season.weather, evening);
-    schedule.litHours[n] = lit.litHours;
-    schedule.poweredHours[n] = Math.max(0, span.endAt - poweredFrom) / HOUR_MS;
-    schedule.trips[n] = of.trips ? (on ? of.trips.perShowNight : of.trips.perNightOff) : 0;
-    schedule.showNight[n] = on ? 1 : 0;
-    schedule.nightC[n] = weather.meanC;
-    schedule.nightSigmaC[n] = weather.sigmaC;
-    const spells =
-      lit.spells.length === 0 && of.trips ? litEvening({ kind: 'by-hand' }, about).spells : lit.spells;
-    let litSoFar = 0;
-    for (const spell of spells) {
-      for (const at of checkMoments(spell)) {
-        checkLitHours.push(lit.spells.length === 0 ? 0 : litSoFar + (at - spell.fromAt) / HOUR_MS);
-        checkGoneShare.push((at - poweredFrom) / Math.max(1, span.endAt - poweredFrom));
-        checkAirC.push(temperatureC(season.weather, at));
-      }
-      litSoFar += (spell.untilAt - spell.fromAt) / HOUR_MS;
-    }
-    checkFrom[n + 1] = checkAirC.length;
-  });
-  return {
+  const schedule: Schedule = {
     from: of.from,
-    count: evenings.length,
-    ...schedule,
-    checkFrom,
-    checkLitHours: Float64Array.from(checkLitHours),
-    checkGoneShare: Float64Array.from(checkGoneShare),
-    checkAirC: Float64Array.from(checkAirC),
+    count: 0,
+    litHours: [],
+    poweredHours: [],
+    trips: [],
+    showNight: [],
+    total: { litHours: 0, poweredHours: 0, trips: 0 },
+    checkFrom: [0],
+    checkLitHours: [],
+    checkGoneShare: [],
+    checkAirC: [],
+    nightC: [],
+    nightSigmaC: [],
   };
+  for (const evening of eveningsFrom(of.from, of.through)) addEvening(schedule, season, of, evening);
+  return schedule;
+}
+
+function addEvening(
+  schedule: Schedule,
+  season: Season,
+  of: { switching: Switching; trips: Trips | undefined; since: Instant },
+  evening: Evening,
+): void {
+  const showNight = season.showNights.get(evening) ?? null;
+  const on = showNight !== null && !showNight.calledOff;
+  const about = { evening, place: season.place, showNight, poweredSinceAt: of.since };
+  const lit = litEvening(of.switching, about);
+  const { startAt, endAt } = eveningSpan(evening, season.place.timeZone);
+  const poweredFrom = Math.max(startAt, of.since);
+  const poweredMs = Math.max(0, endAt - poweredFrom);
+  const weather = eveningWeather(season.weather, evening);
+  const trips = of.trips ? (on ? of.trips.perShowNight : of.trips.perNightOff) : 0;
+  const unlit = lit.spells.length === 0;
+  const spells = unlit && of.trips ? litEvening({ kind: 'by-hand' }, about).spells : lit.spells;
+  let litBefore = 0;
+  for (const spell of spells) {
+    for (const at of checkMoments(spell)) {
+      schedule.checkLitHours.push(unlit ? 0 : litBefore + (at - spell.fromAt) / HOUR_MS);
+      schedule.checkGoneShare.push((at - poweredFrom) / Math.max(1, poweredMs));
+      schedule.checkAirC.push(temperatureC(season.weather, at));
+    }
+    litBefore += (spell.untilAt - spell.fromAt) / HOUR_MS;
+  }
+  schedule.count += 1;
+  schedule.checkFrom.push(schedule.checkAirC.length);
+  schedule.litHours.push(lit.litHours);
+  schedule.poweredHours.push(poweredMs / HOUR_MS);
+  schedule.trips.push(trips);
+  schedule.showNight.push(on);
+  schedule.nightC.push(weather.meanC);
+  schedule.nightSigmaC.push(weather.sigmaC);
+  schedule.total.litHours += lit.litHours;
+  schedule.total.poweredHours += poweredMs / HOUR_MS;
+  schedule.total.trips += trips;
 }
 
 function checkMoments(spell: LitSpell): Instant[] {

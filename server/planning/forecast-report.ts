@@ -130,7 +130,7 @@ function nightsOf({ season }: Asked, projection: PropProjection): ForecastNight[
       chanceLit: projection.chanceLit[n]!,
       meanC: weather.meanC + projection.offsetC,
       weather: weather.source,
-      showNight: schedule.showNight[start + n] === 1,
+      showNight: schedule.showNight[start + n]!,
       likely: COURSE_WORDS[depletion.likely[n]!]!,
     };
   });

@@ -13,19 +13,21 @@ import { plainQuestion } from '../rig/plainly.ts';
 function constantNights(nightsC: number[], litHours: number): Schedule {
   const count = nightsC.length;
   const looks = [0, 0.5, 1];
+  const checks = nightsC.flatMap((airC) => looks.map((look) => ({ airC, look })));
   return {
     from: '2026-12-01',
     count,
-    litHours: new Float64Array(count).fill(litHours),
-    poweredHours: new Float64Array(count).fill(24),
-    trips: new Float64Array(count),
-    showNight: new Uint8Array(count),
-    checkFrom: Uint32Array.from({ length: count + 1 }, (_, n) => n * looks.length),
-    checkLitHours: Float64Array.from({ length: count * 3 }, (_, c) => looks[c % 3]! * litHours),
-    checkGoneShare: Float64Array.from({ length: count * 3 }, (_, c) => looks[c % 3]!),
-    checkAirC: Float64Array.from({ length: count * 3 }, (_, c) => nightsC[Math.floor(c / 3)]!),
-    nightC: Float64Array.from(nightsC),
-    nightSigmaC: new Float64Array(count),
+    litHours: Array(count).fill(litHours),
+    poweredHours: Array(count).fill(24),
+    trips: Array(count).fill(0),
+    showNight: Array(count).fill(false),
+    total: { litHours: count * litHours, poweredHours: count * 24, trips: 0 },
+    checkFrom: Array.from({ length: count + 1 }, (_, n) => n * looks.length),
+    checkLitHours: checks.map(({ look }) => look * litHours),
+    checkGoneShare: checks.map(({ look }) => look),
+    checkAirC: checks.map(({ airC }) => airC),
+    nightC: nightsC,
+    nightSigmaC: Array(count).fill(0),
   };
 }
 
@@ -49,6 +51,7 @@ function follow(nightsC: number[]) {
     mahPerTrip: 0,
     usedAtStartMah: 0,
     selfDischargeMah: () => 0,
+    spread: 0.2,
   });
 }
 

@@ -3,8 +3,8 @@ import path from 'node:path';
 import { describe, expect, it } from 'vitest';
 import {
   type CellSet,
+  dailyLossOf,
   litVoltsAt,
-  selfDischargeMah,
   usableShares,
   weakestShare,
 } from '../../server/model/cell.ts';
@@ -195,8 +195,9 @@ describe('worked values, by hand from the tables', () => {
   });
   it('self-discharge: lead 60 days at 5 °C 2.48 %, alkaline 42 days at 0 °C 0.072 %, nickel 42 days 7 % at 20 °C, 2.5 % at 5 °C', () => {
     const lost = (set: CellSet, days: number, tempC: number) => {
+      const loss = dailyLossOf(set);
       let mah = 0;
-      for (let day = 0; day < days; day += 1) mah += selfDischargeMah(set, { ageDays: day, days: 1, tempC });
+      for (let day = 0; day < days; day += 1) mah += loss(day, tempC);
       return (100 * mah) / (set.type.capacityMah * set.parallel);
     };
     expect(lost(builtIn('PB12V14'), 60, 5)).toBeCloseTo(2.48, 2);

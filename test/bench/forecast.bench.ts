@@ -1,0 +1,191 @@
+import { bench, describe } from 'vitest';
+import { forecastSite } from '../../server/actions/forecast-site.ts';
+import { buildApp } from '../../server/app.ts';
+import { settableClock } from '../../server/clock.ts';
+import type { CellType } from '../../server/model/cell-type.ts';
+import { builtInCellType } from '../../server/model/cell-types-built-in.ts';
+import { instantInEvening } from '../../server/model/evening.ts';
+import type { Prop } from '../../server/model/prop.ts';
+import { type PropProjection, projectProp } from '../../server/model/prop-forecast.ts';
+import { insertEntry } from '../../server/store/log.ts';
+import { openStore, type Store } from '../../server/store/open.ts';
+import { insertProp } from '../../server/store/props.ts';
+import { insertSite, raiseRevision } from '../../server/store/sites.ts';
+import { aSeason, CLIMATE, freshSet, manyProps, PLACE } from '../rig/many-props.ts';
+import { plainQuestion } from '../rig/plainly.ts';
+import { stepHourByHour } from './hour-by-hour.ts';
+import { requestsPerSecond } from './load.ts';
+
+const FROM = '2026-10-10';
+const THROUGH = '2027-02-06';
+const fittedAt = instantInEvening(FROM, '15:00', PLACE.timeZone);
+
+function siteWith(count: number): Store {
+  const store = openStore(':memory:');
+  store.transact((db) => {
+    insertSite(db, {
+      id: 'site',
+      name: 'Bench',
+      ...PLACE,
+      seasonFrom: FROM,
+      seasonThrough: THROUGH,
+      monthlyMinC: CLIMATE.monthlyMinC,
+      monthlyMaxC: CLIMATE.monthlyMaxC,
+      confidence: 0.9,
+      marginNights: 1,
+      rounds: {
+        weekdays: [3, 6],
+        startsAt: '14:00',
+        minutesFree: 90,
+        minutesPerStop: 3,
+        walkMinutes: 25,
+        cost: 10,
+      },
+      zoneOffsetsC: {},
+    });
+    for (const prop of manyProps(count)) {
+      insertProp(db, prop);
+      for (const entry of freshSet(prop, fittedAt)) insertEntry(db, entry);
+    }
+    raiseRevision(db, 'site', fittedAt);
+  });
+  return store;
+}
+
+const depsOf = (store: Store) => ({
+  store,
+  clock: settableClock(fittedAt + 3_600_000),
+  newId: () => 'x',
+  newSecret: () => 'x',
+});
+
+function median(values: number[]): number {
+  return [...values].sort((a, b) => a - b)[Math.floor(values.length / 2)]!;
+}
+
+function timesMs(rounds: number, work: (round: number) => void): number[] {
+  return Array.from({ length: rounds }, (_, round) => {
+    const begin = performance.now();
+    work(round);
+    return performance.now() - begin;
+  });
+}
+
+function project(props: readonly Prop[], season: ReturnType<typeof aSeason>): PropProjection[] {
+  const shelf = new Map();
+  const cellTypeOf = (id: string): CellType | null => builtInCellType(id);
+  return props.map((prop) => {
+    const log = freshSet(prop, fittedAt);
+    return projectProp({
+      prop,
+      log,
+      cellTypeOf,
+      zoneOffsetC: 0,
+      season,
+      asOf: fittedAt,
+      shelf,
+    }) as PropProjection;
+  });
+}
+
+/** The whole site forecast, reading the database included, against the plain sum for the likely course alone. */
+function againstPlain(): void {
+  const props = manyProps(500);
+  const season = aSeason(FROM, THROUGH);
+  const store = siteWith(500);
+  const deps = depsOf(store);
+  const ours = timesMs(9, () => forecastSite(deps, { siteId: 'site', asOf: fittedAt }));
+  const projections = project(props, season);
+  const begin = performance.now();
+  const apart = props.map((prop, i) => {
+    const projection = projections[i]!;
+    const plain = stepHourByHour(plainQuestion({ prop, season, fittedAt, projection }, 1));
+    const { depletion } = projection;
+    const dimNight = depletion.brightBelow.findIndex((threshold) => threshold < 1);
+    if (dimNight === -1 || plain.dimAfterNights === null)
+      return dimNight === -1 && plain.dimAfterNights === null ? 0 : 1;
+    return Math.abs(dimNight + depletion.brightShare[dimNight]! - plain.dimAfterNights);
+  });
+  const plainMs = performance.now() - begin;
+  store.close();
+  const oursMs = median(ours.slice(2));
+  console.log(
+    `site forecast, 500 props × 120 nights: ${oursMs.toFixed(0)} ms (first ${ours[0]!.toFixed(0)} ms) for ranges, chances and both limits; ` +
+      `hour by hour, the likely course alone: ${(plainMs / 1000).toFixed(1)} s; ${(plainMs / oursMs).toFixed(0)} times as fast\n` +
+      `  first dim moments apart: median ${median(apart).toFixed(3)} nights, ${apart.filter((nights) => nights > 0.1).length} of 500 by more than 0.1 (spared by a hair at dawn)`,
+  );
+}
+
+function manyPropsMemory(): void {
+  const store = siteWith(10_000);
+  const deps = depsOf(store);
+  const [first, second] = timesMs(2, () => forecastSite(deps, { siteId: 'site', asOf: fittedAt }));
+  const residentMb = process.resourceUsage().maxRSS / 1024;
+  store.close();
+  console.log(
+    `site forecast, 10,000 props × 120 nights: ${(first! / 1000).toFixed(2)} s, again ${(second! / 1000).toFixed(2)} s; ` +
+      `largest resident memory of this process ${residentMb.toFixed(0)} MB`,
+  );
+}
+
+async function overHttp(): Promise<void> {
+  const store = siteWith(50);
+  const clock = settableClock(fittedAt + 3_600_000);
+  const app = buildApp({ store, clock });
+  const path = '/api/sites/site/forecast';
+  const size = (await app.inject({ url: path, headers: { host: '127.0.0.1' } })).body.length;
+  const constant = JSON.stringify({ constant: 'x'.repeat(size - 15) });
+  const floor = (await import('fastify')).default();
+  floor.get('/constant', (_, reply) =>
+    reply
+      .type('application/json; charset=utf-8')
+      .serializer((text: string) => text)
+      .send(constant),
+  );
+  const reads: number[] = [];
+  for (let round = 0; round < 30; round += 1) {
+    raiseRevision(store.db, 'site', clock.now());
+    const begin = performance.now();
+    await app.inject({ url: path, headers: { host: '127.0.0.1' } });
+    reads.push(performance.now() - begin);
+  }
+  console.log(
+    `first read of a changed 50-prop site's forecast over HTTP: median ${median(reads.slice(10)).toFixed(1)} ms, first of all ${reads[0]!.toFixed(1)} ms`,
+  );
+  const [ours, floorAt] = [
+    await app.listen({ port: 0, host: '127.0.0.1' }),
+    await floor.listen({ port: 0, host: '127.0.0.1' }),
+  ];
+  const answer = await fetch(`${ours}${path}`);
+  const etag = answer.headers.get('etag')!;
+  const rates = { constant: [] as number[], unchanged: [] as number[], whole: [] as number[] };
+  for (let round = 0; round < 5; round += 1) {
+    rates.constant.push(await requestsPerSecond(`${floorAt}/constant`, {}));
+    rates.unchanged.push(await requestsPerSecond(`${ours}${path}`, { 'if-none-match': etag }));
+    rates.whole.push(await requestsPerSecond(`${ours}${path}`, {}));
+  }
+  const [floorRate, unchanged, whole] = [
+    median(rates.constant),
+    median(rates.unchanged),
+    median(rates.whole),
+  ];
+  console.log(
+    `unchanged read again, ${(size / 1024).toFixed(0)} kB: with its ETag ${(unchanged / floorRate).toFixed(2)} ×, whole ${(whole / floorRate).toFixed(2)} × ` +
+      `the requests per second of a bare route that returns a constant of the same size`,
+  );
+  await app.close();
+  await floor.close();
+  store.close();
+}
+
+againstPlain();
+await overHttp();
+manyPropsMemory();
+
+const season = aSeason(FROM, THROUGH);
+const fifty = manyProps(50);
+describe('fifty props over 120 nights', () => {
+  bench('projected', () => {
+    project(fifty, season);
+  });
+});
