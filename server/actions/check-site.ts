@@ -81,8 +81,9 @@ function zoneFaults(site: Site): Fault[] {
   if (!isEvening(site.seasonFrom)) return [];
   const zoneHours = standardOffsetHours(site.timeZone, Number(site.seasonFrom.slice(0, 4)));
   const sunHours = site.longitudeDeg / 15;
-  // Around the clock: places by the date line keep a zone a whole day away from their sun.
-  const apartHours = Math.abs(((zoneHours - sunHours + 36) % 24) - 12);
+  // By the date line there are places that keep the day of those across it: 12 h ahead and more, far in the west.
+  const isAcross = zoneHours >= 12 && sunHours < 0;
+  const apartHours = Math.abs(zoneHours - sunHours - (isAcross ? 24 : 0));
   if (apartHours <= WIDEST_ZONE_HOURS) return [];
   const way = site.longitudeDeg < 0 ? 'east' : 'west';
   const message = `At longitude ${site.longitudeDeg} the sun is ${apartHours.toFixed(1)} h away from the clocks of ${site.timeZone}. Is the longitude ${way} (${-site.longitudeDeg}), or the zone another?`;
