@@ -62,8 +62,19 @@ export const habitsOf = (read: Reader) => ({
     walkMinutes: read.number('rounds.walkMinutes'),
     cost: read.number('rounds.cost'),
   },
-  zoneOffsetsC: readOffsets(read.optionalText('zoneOffsetsC') ?? ''),
+  zoneOffsetsC: offsetsOf(read),
 });
+
+function offsetsOf(read: Reader): Record<string, number> {
+  const { offsets, unread } = readOffsets(read.optionalText('zoneOffsetsC') ?? '');
+  if (unread.length > 0) {
+    read.fault(
+      'zoneOffsetsC',
+      `\u201c${unread[0]}\u201d is not a zone and a number. Write it like “Mill Race: -3”.`,
+    );
+  }
+  return offsets;
+}
 
 export const newSiteOf = (read: Reader): NewSite => ({
   ...placeOf(read),

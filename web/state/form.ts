@@ -22,7 +22,8 @@ export type Reader = {
   optionalText: (field: string) => string | undefined;
   number: (field: string) => number;
   optionalNumber: (field: string) => number | undefined;
-  ok: () => boolean;
+  /** Says what is wrong with a field that is read in a way of its own. */
+  fault: (field: string, message: string) => void;
 };
 
 /**
@@ -91,7 +92,9 @@ function readerOf(fields: Record<string, string>, found: Record<string, string>)
       return 0;
     },
     optionalNumber: (field) => (textOf(field) === '' ? undefined : numberOf(field, textOf(field))),
-    ok: () => Object.keys(found).length === 0,
+    fault: (field, message) => {
+      found[field] = message;
+    },
   };
 }
 

@@ -51,13 +51,15 @@ export function splitNumbers(text: string): string[] {
   return parted.map((part) => part.replace(/,$/, '')).filter((part) => part !== '');
 }
 
-/** 'Mill Race: -3', one a line; a line without a number is left out. */
-export function readOffsets(text: string): Record<string, number> {
+/** 'Mill Race: -3', one a line. @returns the offsets by zone, °C, and the lines that could not be read */
+export function readOffsets(text: string): { offsets: Record<string, number>; unread: string[] } {
   const offsets: Record<string, number> = {};
-  for (const line of text.split('\n')) {
-    const match = /^(.*\S)\s*[:=]\s*(\S+)$/.exec(line.trim());
+  const unread: string[] = [];
+  for (const line of text.split('\n').map((one) => one.trim())) {
+    const match = /^(.*\S)\s*[:=]\s*(\S+)$/.exec(line);
     const offsetC = match ? readNumber(match[2]!) : null;
     if (match && offsetC !== null) offsets[match[1]!] = offsetC;
+    else if (line !== '') unread.push(line);
   }
-  return offsets;
+  return { offsets, unread };
 }
