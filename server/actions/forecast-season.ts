@@ -69,15 +69,12 @@ export function forecastSeason(
     from,
     through: last,
   });
-  const showEvenings = [...showNights.values()]
-    .filter((night) => !night.calledOff)
-    .map((night) => night.evening)
-    .sort();
+  const everyEvening = showNights.size === 0;
   const tooLateToday = of.asOf > instantInEvening(today, site.rounds.startsAt, timeZone);
   return {
     site,
     season: { place, from, through: last, weather, showNights },
-    wanted: { showEvenings, confidence: site.confidence, today },
+    wanted: { everyEvening, confidence: site.confidence, today },
     rounds: nextRounds(today, { weekdays: site.rounds.weekdays, tooLateToday }),
   };
 }

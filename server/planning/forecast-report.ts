@@ -16,7 +16,7 @@ import type { Season } from '../model/schedule.ts';
 import { litEvening } from '../model/switching.ts';
 import { notProjectedWarning, warningsOf } from '../model/warnings.ts';
 import { eveningWeather } from '../model/weather.ts';
-import { swapByOf, type Wanted } from './need.ts';
+import { type ChanceCourse, swapByOf, type Wanted } from './need.ts';
 
 /** The question a forecast answers: which prop, as of when, and what matters to its site. */
 export type Asked = { prop: Prop; asOf: Instant; season: Season; wanted: Wanted };
@@ -86,7 +86,12 @@ export function causeOf(projection: PropProjection, dim: EveningRange): 'used-up
 export function swapByFor(projection: PropProjection, wanted: Wanted): Evening | null {
   const seen = projection.set.lastSeen?.seen;
   if (seen === 'dim' || seen === 'dark') return wanted.today;
-  return swapByOf(projection, wanted);
+  return swapByOf(courseOf(projection), wanted);
+}
+
+/** The part of a projection that decides what is needed. */
+export function courseOf({ from, chanceBright, schedule, start }: PropProjection): ChanceCourse {
+  return { from, chanceBright, showNight: (n) => schedule.showNight[start + n]! };
 }
 
 /** Everything about one prop: ranges, chances by night, and the sum behind them. */

@@ -1,47 +1,48 @@
 import { addEvenings, type Evening, eveningsBetween, weekdayOf } from '../model/evening.ts';
 import type { Seen } from '../model/log-entry.ts';
 
-/** Chances by evening from `from` on. */
-export type ChanceCourse = { from: Evening; chanceBright: ArrayLike<number> };
+/** A prop's chances, and which evenings are show nights that are on, by evening from `from` on. */
+export type ChanceCourse = {
+  from: Evening;
+  chanceBright: ArrayLike<number>;
+  showNight(n: number): boolean;
+};
 
-/** The evenings on which it matters that a prop is bright. */
+/** What is asked of a prop. */
 export type Wanted = {
-  /** The site's show nights that are on, ascending; empty = the site has none, so every evening of the season counts. */
-  showEvenings: readonly Evening[];
+  /** True where the site has no show nights at all: then every evening of the season counts. */
+  everyEvening: boolean;
+  /** Chance of being bright that is wanted on each evening that counts. */
   confidence: number;
   /** The evening it is. */
   today: Evening;
 };
 
-function matters(evening: Evening, wanted: Wanted, on: ReadonlySet<Evening>): boolean {
-  return wanted.showEvenings.length === 0 || on.has(evening);
+/** Places of the evenings that count, from today on. */
+function todayPlace(course: ChanceCourse, wanted: Wanted): number {
+  return Math.max(0, eveningsBetween(course.from, wanted.today));
 }
 
 /**
- * The last evening by which a swap keeps the chance of being bright on every evening that matters at or above the
- * confidence: the evening before the first one that matters and falls short, so that a round at any hour of it is in
+ * The last evening by which a swap keeps the chance of being bright on every evening that counts at or above the
+ * confidence: the evening before the first one that counts and falls short, so that a round at any hour of it is in
  * time. Not before today. null = the set lasts. Ours.
  */
 export function swapByOf(course: ChanceCourse, wanted: Wanted): Evening | null {
-  const on = new Set(wanted.showEvenings);
-  const begin = Math.max(0, eveningsBetween(course.from, wanted.today));
-  for (let n = begin; n < course.chanceBright.length; n += 1) {
-    const evening = addEvenings(course.from, n);
-    if (course.chanceBright[n]! < wanted.confidence && matters(evening, wanted, on)) {
-      const before = addEvenings(evening, -1);
-      return eveningsBetween(wanted.today, before) > 0 ? before : wanted.today;
-    }
+  const today = todayPlace(course, wanted);
+  for (let n = today; n < course.chanceBright.length; n += 1) {
+    if (course.chanceBright[n]! >= wanted.confidence) continue;
+    if (wanted.everyEvening || course.showNight(n)) return addEvenings(course.from, Math.max(today, n - 1));
   }
   return null;
 }
 
-/** Chance of being bright on every evening that matters from today through an evening; 1 when none does. */
+/** Chance of being bright on every evening that counts from today through an evening; 1 when none does. */
 export function chanceThrough(course: ChanceCourse, wanted: Wanted, through: Evening): number {
-  const on = new Set(wanted.showEvenings);
   const end = Math.min(eveningsBetween(course.from, through), course.chanceBright.length - 1);
-  for (let n = end; n >= Math.max(0, eveningsBetween(course.from, wanted.today)); n -= 1) {
-    // The course never rises, so the last evening that matters decides.
-    if (matters(addEvenings(course.from, n), wanted, on)) return course.chanceBright[n]!;
+  for (let n = end; n >= todayPlace(course, wanted); n -= 1) {
+    // The course never rises, so the last evening that counts decides.
+    if (wanted.everyEvening || course.showNight(n)) return course.chanceBright[n]!;
   }
   return 1;
 }

@@ -3,7 +3,7 @@ import type { SiteForecastProp } from '../model/forecast.ts';
 import { type NotProjected, type PropProjection, rangeOf } from '../model/prop-forecast.ts';
 import { notProjectedWarning } from '../model/warnings.ts';
 import { eveningWords } from './evening-words.ts';
-import { type Asked, causeOf, isProjected, leftShareAt, swapByFor } from './forecast-report.ts';
+import { type Asked, causeOf, courseOf, isProjected, leftShareAt, swapByFor } from './forecast-report.ts';
 import { type Group, groupOf } from './need.ts';
 
 /** One prop's line in the site's forecast. @param reach the next two rounds and the site's margin */
@@ -30,7 +30,7 @@ export function siteForecastProp(
     };
   }
   const { wanted } = asked;
-  const { group, chanceBrightToNextRound } = groupOf(outcome, wanted, {
+  const { group, chanceBrightToNextRound } = groupOf(courseOf(outcome), wanted, {
     ...reach,
     lastSeen: lastSeen?.seen ?? null,
   });
