@@ -1,5 +1,6 @@
+import { realpathSync } from 'node:fs';
 import type { AddressInfo } from 'node:net';
-import { pathToFileURL } from 'node:url';
+import { fileURLToPath } from 'node:url';
 import { buildApp } from './app.ts';
 import { type Clock, fixedClock, systemClock } from './clock.ts';
 import { type Config, ConfigError, readConfig } from './config.ts';
@@ -77,5 +78,7 @@ export async function runMain(run: () => Promise<void>): Promise<void> {
   }
 }
 
-const isProgram = process.argv[1] !== undefined && import.meta.url === pathToFileURL(process.argv[1]).href;
+// The path it was started by may be a link to this file.
+const startedBy = process.argv[1];
+const isProgram = startedBy !== undefined && realpathSync(startedBy) === fileURLToPath(import.meta.url);
 if (isProgram) await runMain(async () => closeOnSignal(await serve(readConfig())));

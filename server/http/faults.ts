@@ -30,7 +30,8 @@ export function faultsOf(
   const faults = new Map<string, Fault>();
   const errors = withoutOtherBranches(root, refused);
   for (const error of errors) {
-    const value = at(refused.value, error.instancePath);
+    // A body that is not there arrives as null.
+    const value = at(refused.value ?? undefined, error.instancePath);
     const node = nodeAt(root, error.schemaPath);
     for (const fault of sentences(error, { node, value, field: fieldOf(error.instancePath) })) {
       const field = fault.field || refused.whole;
@@ -59,7 +60,7 @@ function sentences(error: TLocalizedValidationError, context: Context): Fault[] 
         message: `${name} is missing.${hintOf(node.properties?.[name])}`,
       }));
     case 'additionalProperties':
-      return error.params.additionalProperties.map((name) => ({
+      return error.params.additionalProperties.slice(0, MOST_FAULTS).map((name) => ({
         field: under(shortened(name)),
         message: unknownField(name, Object.keys(node.properties ?? {})),
       }));

@@ -8,7 +8,7 @@ declare module 'fastify' {
   }
 }
 
-const LOOPBACK = new Set(['127.0.0.1', 'localhost', '[::1]']);
+const LOOPBACK = /^(localhost|\[::1\]|127(\.\d{1,3}){3})$/;
 const WRITES = new Set(['POST', 'PUT', 'PATCH', 'DELETE']);
 const JSON_ONLY = ['application/json'];
 
@@ -36,7 +36,7 @@ function checkHost(request: FastifyRequest, known: URL | null): void {
   const [, name = '', port] = /^(.*?)(?::(\d+))?$/.exec(host) ?? [];
   // Without a socket (a request made inside the process) the port is HTTP's own.
   const listening = String(request.raw.socket.localPort ?? 80);
-  if (LOOPBACK.has(name) && (port === undefined || port === listening)) return;
+  if (LOOPBACK.test(name) && (port === undefined || port === listening)) return;
   throw new HttpProblem(
     'wrong-host',
     `This service answers to 127.0.0.1, localhost and [::1] on port ${listening} only. To reach it by another name set DUSKROUND_PUBLIC_URL.`,
@@ -61,7 +61,11 @@ function checkOrigin(request: FastifyRequest, known: URL | null): void {
 function checkContentType(request: FastifyRequest): void {
   const { headers } = request;
   const hasBody = headers['transfer-encoding'] !== undefined || Number(headers['content-length'] ?? 0) > 0;
-  if (!hasBody) return;
+  if (!hasBody) {
+    // Some programs name a kind of content even where there is none; nothing is no broken JSON.
+    delete headers['content-type'];
+    return;
+  }
   // An address nobody offers is answered as such, whatever was sent.
   if (request.is404) return;
   const reads = request.routeOptions.config.reads ?? JSON_ONLY;

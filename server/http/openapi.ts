@@ -35,7 +35,8 @@ export function describeApi(app: FastifyInstance, version: string): void {
     },
     transform: ({ schema, url, route }) => {
       const isWriting = [route.method].flat().some(isWrite);
-      return { schema: withProblems(schema ?? {}, isWriting ? WRITE_PROBLEMS : READ_PROBLEMS), url };
+      const described = withProblems(schema ?? {}, isWriting ? WRITE_PROBLEMS : READ_PROBLEMS);
+      return { schema: withFile(described, route.config?.reads ?? []), url };
     },
     refResolver: {
       buildLocalReference: (json, _baseUri, _fragment, index) =>
@@ -55,6 +56,15 @@ function withProblems(schema: FastifySchema, statuses: readonly number[]): Fasti
     },
   ]);
   return { ...schema, response: { ...(schema.response as object), ...Object.fromEntries(problems) } };
+}
+
+/** A file has no schema to be checked by, so what may be sent is only described. */
+function withFile(schema: FastifySchema, types: readonly string[]): FastifySchema {
+  if (types.length === 0) return schema;
+  const file = { type: 'string', description: 'The file as it is.' };
+  const form = { type: 'object', required: ['file'], properties: { file } };
+  const content = types.map((type) => [type, { schema: type.startsWith('multipart/') ? form : file }]);
+  return { ...schema, body: { content: Object.fromEntries(content) } };
 }
 
 function titlesOf(status: number): string {

@@ -101,10 +101,10 @@ const SITES: Row[] = [
   ['a field of our own', { ...A_SITE, id: 'mine' }, 'id', '`id` is not a field here'],
   ['a field missing', { ...A_SITE, timeZone: undefined }, 'timeZone', 'timeZone is missing'],
   ['a list for a body', [], 'body', 'A list is given where a JSON object is wanted'],
-  ['null for a body', 'null', 'body', 'null is given where a JSON object is wanted'],
+  ['null for a body', 'null', 'body', 'Nothing is given where a JSON object is wanted'],
   ['no JSON', '{"name": NaN}', '', 'no JSON'],
   ['a single quote', "{'name': 'x'}", '', 'no JSON'],
-  ['nothing at all', '', '', 'empty'],
+  ['nothing at all', '', 'body', 'Nothing is given where a JSON object is wanted'],
   ['a name for the prototype', '{"__proto__": {"x": 1}}', '', 'no JSON'],
 ];
 
@@ -383,5 +383,10 @@ test('a long text does not hold the service up', async () => {
       .post('/api/sites')
       .send({ ...A_SITE, name })
       .expect(400);
+  const manyFields = Object.fromEntries(
+    Array.from({ length: 50_000 }, (_, index) => [`latitudeDe${index}`, 1]),
+  );
+  await ask.post('/api/sites').send(manyFields).expect(400);
+  await ask.post('/api/sites').set('content-type', 'application/json').send('['.repeat(500_000)).expect(400);
   expect(performance.now() - startedAt).toBeLessThan(5_000);
 });

@@ -30,6 +30,7 @@ test('answers to its own names on its own port only', async () => {
   const port = await listening(rig);
   for (const host of [
     `127.0.0.1:${port}`,
+    `127.1.2.3:${port}`,
     `localhost:${port}`,
     `LOCALHOST:${port}`,
     `[::1]:${port}`,

@@ -86,6 +86,14 @@ describe('the API’s description of itself', () => {
     }
   });
 
+  test('says what a weather file may be sent as', async () => {
+    const { operations } = await aDocument();
+    const operation = new Map(operations).get('POST /api/sites/{siteId}/weather') as unknown as {
+      requestBody: { content: object };
+    };
+    expect(Object.keys(operation.requestBody.content).sort()).toEqual(['multipart/form-data', 'text/csv']);
+  });
+
   test('has no reference that leads nowhere, and nothing of OpenAPI 3.0', async () => {
     const { document } = await aDocument();
     const text = JSON.stringify(document);

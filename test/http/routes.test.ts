@@ -20,7 +20,8 @@ describe('sites', () => {
     const changes = { name: ' Quarry  Top ', zoneOffsetsC: { 'Mill Race': -3 }, confidence: 0.95 };
     const changed = await ask.patch(made.headers.location!).send(changes).expect(200);
     expect(changed.body).toEqual({ ...made.body, ...changes, name: 'Quarry  Top' });
-    await ask.delete(made.headers.location!).expect(204);
+    // Some programs name a content type even where there is no content.
+    await ask.delete(made.headers.location!).set('content-type', 'application/json').expect(204);
     await ask.get(made.headers.location!).expect(404);
   });
 
@@ -313,10 +314,10 @@ describe('forecasts', () => {
     const then = await rig.ask
       .get(`/api/sites/${site.id}/forecast?asOf=2026-10-10T12:30:00%2B01:00`)
       .expect(200);
-    // Before local noon it is still the evening before.
     expect(then.body).toMatchObject({ asOf: '2026-10-10T11:30:00Z', evening: '2026-10-10' });
-    const morning = await rig.ask.get(`/api/sites/${site.id}/forecast?asOf=2026-10-10T10:00:00Z`).expect(200);
-    expect(morning.body.evening).toBe('2026-10-09');
+    // After midnight it is still the evening before.
+    const late = await rig.ask.get(`/api/sites/${site.id}/forecast?asOf=2026-10-10T01:00:00Z`).expect(200);
+    expect(late.body.evening).toBe('2026-10-09');
   });
 
   test('a prop forecast names its nights through the evening asked for', async () => {

@@ -31,7 +31,6 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'importWeather',
         summary:
           'Take a weather file in: a typical year (EPW) or a CSV of time and temperature, as text/csv or a form upload',
-        consumes: ['text/csv', FORM],
         querystring: WeatherQuery,
         response: { 200: WeatherImported },
       },
