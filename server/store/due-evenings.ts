@@ -1,23 +1,10 @@
 import { and, asc, eq, getTableColumns, notInArray } from 'drizzle-orm';
-import type { Evening, Instant } from '../model/evening.ts';
+import type { DueEvent } from '../model/due-event.ts';
 import type { Db } from './open.ts';
 import { dueEvenings } from './schema.ts';
 import { StoreError } from './store-error.ts';
 
-/** What calendars were last told of an evening on which sets must be swapped. */
-export type DueEvent = {
-  uid: string;
-  siteId: string;
-  evening: Evening;
-  /** Counts the changes that were told, from 0. */
-  sequence: number;
-  createdAt: Instant;
-  modifiedAt: Instant;
-  state: 'due' | 'cancelled';
-  /** Of the content last told: another one means a change. */
-  fingerprint: string;
-  propIds: string[];
-};
+export type { DueEvent };
 
 /** What was told of the site, by evening. */
 export function listDueEvents(db: Db, siteId: string): DueEvent[] {
