@@ -277,6 +277,24 @@ describe('calendar links', () => {
     await rig.ask.delete(`${links}/${made.body.id}`).expect(404);
   });
 
+  test('the address opens the calendar until it is revoked', async () => {
+    const rig = await aRig();
+    const { site, prop } = await aSiteWithProp(rig);
+    await rig.ask
+      .post(`/api/props/${prop.id}/swaps`)
+      .send({ at: '2026-10-18T15:00:00Z', state: 'new' })
+      .expect(201);
+    const made = await rig.ask.post(`/api/sites/${site.id}/calendar-links`).send({}).expect(201);
+    const feed = new URL(made.body.url).pathname;
+    const calendar = await rig.ask.get(feed).buffer(true).expect(200);
+    expect(calendar.text).toMatch(/^BEGIN:VCALENDAR\r\n[\s\S]*C-02[\s\S]*END:VCALENDAR\r\n$/);
+    await rig.ask.get(feed).set('if-none-match', calendar.headers.etag!).expect(304);
+    const [link] = (await rig.ask.get(`/api/sites/${site.id}/calendar-links`).expect(200)).body;
+    expect(link.lastReadAt).toBe('2026-10-22T09:00:00Z');
+    await rig.ask.delete(`/api/sites/${site.id}/calendar-links/${made.body.id}`).expect(204);
+    await rig.ask.get(feed).set('if-none-match', calendar.headers.etag!).expect(404);
+  });
+
   test('an empty request will do', async () => {
     const rig = await aRig({ publicUrl: 'https://lights.example.org/walk' });
     const { site } = await aSiteWithProp(rig);
