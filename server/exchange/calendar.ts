@@ -14,7 +14,7 @@ const MINUTE_MS = 60_000;
 /**
  * A site's due evenings as iCalendar text (RFC 5545), fit for a subscription. The same events give the same bytes
  * whenever and wherever they are asked for: only UTC instants, and no stamp of the asking. Nothing tells where the
- * site is. Source of the recipe: interop.md §1.
+ * site is. Source: RFC 5545, RFC 7986 (NAME, REFRESH-INTERVAL).
  * @param siteName what the calendar is called after
  * @param options.events in the order they are to stand in
  * @param options.alarms whether events that are due ring, half an hour before

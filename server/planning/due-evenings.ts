@@ -34,7 +34,7 @@ export type DueContent = {
 /** Nobody walks more stops in an evening, and a neglected site's calendar must stay under a megabyte. Ours. */
 export const MOST_STOPS_TOLD = 60;
 const SHORTEST_MINUTES = 15;
-// Calendars lose what is dropped, but some refuse long files. Source: interop.md §1, Cancelled and done.
+// Calendars lose what is dropped, but some refuse long files. From memory of how calendar programs behave.
 const PAST_EVENINGS_KEPT = 60;
 const CANCELLED_EVENINGS_KEPT = 7;
 const LATEST_DAYS_AHEAD = 548;
