@@ -1,5 +1,5 @@
 import { existsSync } from 'node:fs';
-import { join } from 'node:path';
+import { dirname, join } from 'node:path';
 import fastifyStatic from '@fastify/static';
 import type { FastifyInstance, FastifyReply, FastifyRequest } from 'fastify';
 
@@ -10,6 +10,8 @@ declare module 'fastify' {
   }
 }
 
+// The build puts such files in a folder of their own: index-CVKq2CBX.js
+const HASHED = /-[\w-]{8}\.\w+$/;
 const YEAR_SECONDS = 31_536_000;
 
 /**
@@ -35,7 +37,7 @@ export function servePages(app: FastifyInstance, webRoot: string): void {
     wildcard: false,
     cacheControl: false,
     setHeaders: (reply, path) => {
-      const isHashed = path.startsWith(join(webRoot, 'assets'));
+      const isHashed = dirname(path) !== webRoot && HASHED.test(path);
       reply.header('cache-control', isHashed ? `public, max-age=${YEAR_SECONDS}, immutable` : 'no-cache');
     },
   });

@@ -9,7 +9,8 @@ function someBuiltPages(): string {
   onTestFinished(() => rmSync(folder, { recursive: true, force: true }));
   mkdirSync(join(folder, 'assets'));
   writeFileSync(join(folder, 'index.html'), '<!doctype html><title>Pages</title>');
-  writeFileSync(join(folder, 'assets', 'main-abc123.js'), 'export {};');
+  writeFileSync(join(folder, 'assets', 'main-DC5KU-7P.js'), 'export {};');
+  writeFileSync(join(folder, 'wick-original.svg'), '<svg xmlns="http://www.w3.org/2000/svg"/>');
   return folder;
 }
 
@@ -39,10 +40,12 @@ test('addresses of the API and of calendars are never a page', async () => {
 
 test('files with a hash in their name are kept for good', async () => {
   const { ask } = await aRig({ webRoot: someBuiltPages() });
-  const file = await ask.get('/assets/main-abc123.js').expect(200);
+  const file = await ask.get('/assets/main-DC5KU-7P.js').expect(200);
   expect(file.headers['cache-control']).toBe('public, max-age=31536000, immutable');
   expect(file.headers['content-type']).toContain('javascript');
   await ask.get('/assets/main-gone.js').expect(404);
+  const plain = await ask.get('/wick-original.svg').expect(200);
+  expect(plain.headers['cache-control']).toBe('no-cache');
 });
 
 test('nothing outside the folder is served', async () => {
