@@ -6,6 +6,7 @@ import { instantInEvening } from '../../server/model/evening.ts';
 import { type PropProjection, projectProp } from '../../server/model/prop-forecast.ts';
 import type { Schedule } from '../../server/model/schedule.ts';
 import { stepHourByHour } from '../bench/hour-by-hour.ts';
+import { holdTo } from '../reference/accuracy.ts';
 import { aSeason, freshSet, manyProps } from '../rig/many-props.ts';
 import { plainQuestion } from '../rig/plainly.ts';
 
@@ -140,6 +141,25 @@ describe('against the plain hour-by-hour sum', () => {
     },
     30_000,
   );
+
+  it('first dim moments lie close together', (context) => {
+    const differences = projected.map(({ prop, projection }) => {
+      const { depletion } = projection;
+      const dimNight = depletion.brightBelow.findIndex((threshold) => threshold < 1);
+      const plain = stepHourByHour(plainQuestion({ prop, season, fittedAt, projection }, 1));
+      return dimNight + depletion.brightShare[dimNight]! - plain.dimAfterNights!;
+    });
+    holdTo(
+      { rms: 0.15, maxAbs: 0.6 },
+      {
+        context,
+        what: 'first dim moment, 30 props of ten sorts over 120 nights',
+        against: 'a plain hour-by-hour sum',
+        unit: 'nights',
+        differences,
+      },
+    );
+  }, 30_000);
 
   it('thresholds are the drain factors at which the plain sum goes dim and dark', () => {
     let compared = 0;
