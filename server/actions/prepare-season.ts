@@ -5,10 +5,10 @@ import type { Place } from '../model/sun.ts';
 import type { ShowNight } from '../model/switching.ts';
 import { type SeasonWeather, seasonWeather } from '../model/weather.ts';
 import type { Db } from '../store/open.ts';
-import { listShowNights } from '../store/show-nights.ts';
 import { findHours, findTypicalYear, listTypedNights } from '../store/weather.ts';
 import type { Deps } from './deps.ts';
 import { siteOf } from './find-site.ts';
+import { showNightsKnownAt } from './list-show-nights.ts';
 
 /** What everything reckoned for a site starts from. */
 export type SiteSeason = {
@@ -54,14 +54,4 @@ export function siteSeason(
 function climateOfSite(db: Db, site: Site): Climate {
   const typicalYear = findTypicalYear(db, site.id);
   return typicalYear ? climateOfTypicalYear(typicalYear, site) : climateOf(site);
-}
-
-function showNightsKnownAt(db: Db, siteId: string, asOf: Instant): Map<Evening, ShowNight> {
-  const known = new Map<Evening, ShowNight>();
-  for (const { evening, opensAt, closesAt, ...night } of listShowNights(db, siteId)) {
-    if (night.addedAt > asOf) continue;
-    const calledOff = night.calledOff && (night.calledOffAt ?? 0) <= asOf;
-    known.set(evening, { evening, opensAt, closesAt, calledOff });
-  }
-  return known;
 }

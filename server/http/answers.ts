@@ -28,7 +28,7 @@ function switchingAnswer(switching: PropValue['switching']): Switching {
 
 export function nightAnswer(night: NightValue): Night {
   return {
-    ...night,
+    ...told(night),
     sunsetAt: text(night.sunsetAt),
     sunriseAt: text(night.sunriseAt),
     duskAt: text(night.duskAt),
@@ -36,12 +36,23 @@ export function nightAnswer(night: NightValue): Night {
   };
 }
 
-export function propForecastAnswer(forecast: PropForecastValue): PropForecast {
-  return { ...forecast, asOf: formatInstant(forecast.asOf), fittedAt: text(forecast.fittedAt) };
+/** Digits of a reckoned number that are sent: the rest says nothing and makes every answer longer. */
+const DIGITS_SENT = 6;
+
+function told<Value>(value: Value): Value {
+  if (typeof value === 'number') return Number(value.toPrecision(DIGITS_SENT)) as Value;
+  if (Array.isArray(value)) return value.map(told) as Value;
+  if (typeof value !== 'object' || value === null) return value;
+  return Object.fromEntries(Object.entries(value).map(([name, each]) => [name, told(each)])) as Value;
 }
 
-export function siteForecastAnswer(forecast: SiteForecastValue): SiteForecast {
-  return { ...forecast, asOf: formatInstant(forecast.asOf) };
+export function propForecastAnswer(forecast: PropForecastValue): PropForecast {
+  const { propId, asOf, fittedAt, ...reckoned } = forecast;
+  return { propId, asOf: formatInstant(asOf), fittedAt: text(fittedAt), ...told(reckoned) };
+}
+
+export function siteForecastAnswer({ asOf, ...forecast }: SiteForecastValue): SiteForecast {
+  return { asOf: formatInstant(asOf), ...told(forecast) };
 }
 
 export function entryAnswer(entry: EntryValue, hints: string[] = []): LogEntry {

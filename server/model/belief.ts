@@ -14,6 +14,7 @@ export type Belief = { spread: number };
 const LEFT_SHARE_SD = 0.12;
 const LEFT_SHARE_UNKNOWN_SD = 0.25;
 
+/** The belief before anybody has looked. @param of.load the draw with its own spread; @param of.leftShare 0..1 */
 export function priorBelief(of: {
   kind: CellKind;
   load: ReckonedLoad;

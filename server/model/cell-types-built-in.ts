@@ -221,6 +221,7 @@ export const BUILT_IN_CELL_TYPES: readonly CellType[] = ROWS.map(
 
 const byId = new Map(BUILT_IN_CELL_TYPES.map((type) => [type.id, type]));
 
+/** A built-in cell type by its id ('LR6'); null when there is none. */
 export function builtInCellType(id: string): CellType | null {
   return byId.get(id) ?? null;
 }

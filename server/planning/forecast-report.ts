@@ -23,6 +23,7 @@ export type Asked = { prop: Prop; asOf: Instant; season: Season; wanted: Wanted 
 
 const NEVER: EveningRange = { early: null, likely: null, late: null };
 
+/** Whether a prop could be projected at all. */
 export function isProjected(outcome: PropProjection | NotProjected): outcome is PropProjection {
   return 'depletion' in outcome;
 }

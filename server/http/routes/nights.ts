@@ -6,6 +6,7 @@ import { listShowNights } from '../../actions/list-show-nights.ts';
 import { setShowNights } from '../../actions/set-show-nights.ts';
 import { nightAnswer } from '../answers.ts';
 import { asOfIn } from '../bodies.ts';
+import { SiteForecastQuery } from '../schemas/forecasts.ts';
 import { Night, NightsQuery, ShowNights } from '../schemas/sites.ts';
 
 type OfSite = { Params: { siteId: string } };
@@ -27,16 +28,17 @@ export function nightRoutes(app: FastifyInstance, deps: Deps): void {
     },
   );
 
-  app.get<OfSite>(
+  app.get<OfSite & { Querystring: SiteForecastQuery }>(
     '/api/sites/:siteId/show-nights',
     {
       schema: {
         operationId: 'listShowNights',
-        summary: 'The show nights as they stand',
+        summary: 'The show nights as they stand, or stood',
+        querystring: SiteForecastQuery,
         response: { 200: ShowNights },
       },
     },
-    async (request) => listShowNights(deps, request.params),
+    async (request) => listShowNights(deps, { ...request.params, ...asOfIn(request.query) }),
   );
 
   app.put<OfSite & { Body: ShowNights }>(
