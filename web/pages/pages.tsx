@@ -24,10 +24,12 @@ function Chosen() {
   const { place, sites, site, health, problem, reload } = useShell();
   // Before the moment is known nothing can be told from tonight.
   if (!sites || !health) {
-    return problem ? (
-      <Trouble problem={problem} onAgain={() => void reload()} />
-    ) : (
-      <Waiting what="your sites" />
+    if (!problem) return <Waiting what="your sites" />;
+    return (
+      <>
+        <PageHead title="No answer yet" />
+        <Trouble problem={problem} onAgain={() => void reload()} />
+      </>
     );
   }
   if (!site || place.route.page === 'new-site') return <NewSitePage isFirst={!site} />;

@@ -1,7 +1,7 @@
 import { useEffect, useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
 import type { CellType, Prop, Site } from '../api/types.ts';
-import { FormTrouble, Trouble, Waiting } from '../parts/notice.tsx';
+import { FormTrouble, Waiting } from '../parts/notice.tsx';
 import { PageHead } from '../parts/page-head.tsx';
 import { useForm } from '../state/form.ts';
 import { forgetAnswers, useRead } from '../state/read.ts';
@@ -15,6 +15,7 @@ import {
   SwitchingFields,
   TripFields,
 } from './prop-form-fields.tsx';
+import { NoProp } from './prop-page.tsx';
 
 /** A new prop, with every field the contract has. */
 export function NewPropPage({ site }: { site: Site }) {
@@ -26,7 +27,7 @@ export function ChangePropPage({ propId }: { propId: string }) {
   const { sites } = useShell();
   const prop = useRead(`prop ${propId}`, () => api.prop(propId));
   const site = sites?.find(({ id }) => id === prop.value?.siteId);
-  if (prop.problem) return <Trouble problem={prop.problem} onAgain={() => void prop.again()} />;
+  if (prop.problem) return <NoProp problem={prop.problem} onAgain={() => void prop.again()} />;
   if (!prop.value || !site) return <Waiting what="the prop" />;
   return <PropForm site={site} prop={prop.value} />;
 }

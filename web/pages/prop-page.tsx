@@ -1,7 +1,15 @@
 import type { ComponentChildren } from 'preact';
 import { useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
-import type { CellType, LogEntry, Prop, PropForecast, Site, SiteForecastProp } from '../api/types.ts';
+import type {
+  CellType,
+  LogEntry,
+  Problem,
+  Prop,
+  PropForecast,
+  Site,
+  SiteForecastProp,
+} from '../api/types.ts';
 import { sign } from '../drawing/sign.ts';
 import { Link } from '../parts/link.tsx';
 import { Cautions, Status, Trouble, Waiting } from '../parts/notice.tsx';
@@ -35,7 +43,7 @@ export function PropPage({ propId }: { propId: string }) {
   const site = sites?.find(({ id }) => id === prop.value?.siteId);
 
   if (!prop.value || !site) {
-    if (prop.problem) return <Trouble problem={prop.problem} onAgain={() => void prop.again()} />;
+    if (prop.problem) return <NoProp problem={prop.problem} onAgain={() => void prop.again()} />;
     return <Waiting what="the prop" />;
   }
   const tonight = eveningAhead(momentAt, site.timeZone);
@@ -104,6 +112,16 @@ export function PropPage({ propId }: { propId: string }) {
 
 /** The dim range, where there is a set to reckon with. */
 const dimOf = (forecast: PropForecast | null) => (forecast?.usableMah ? forecast.dim : null);
+
+/** Instead of a prop: why it is not there. */
+export function NoProp({ problem, onAgain }: { problem: Problem; onAgain: () => void }) {
+  return (
+    <>
+      <PageHead title={problem.status === 404 ? 'No such prop' : 'The prop did not come'} />
+      <Trouble problem={problem} onAgain={onAgain} />
+    </>
+  );
+}
 
 function PropHead({ prop }: { prop: Prop }) {
   return (
