@@ -124,12 +124,10 @@ export const api = {
     request<Prop>('PATCH', `/props/${propId}`, { json: changes }),
   forecast: (propId: string, asOf: AsOf) =>
     request<PropForecast>('GET', `/props/${propId}/forecast`, { query: { asOf } }),
-  log: (propId: string) => request<LogPage>('GET', `/props/${propId}/log`),
+  log: (propId: string) => request<LogEntry[]>('GET', `/props/${propId}/log`),
   recordSwap: (propId: string, swap: NewSwap, key: string) =>
     request<Swap>('POST', `/props/${propId}/swaps`, { json: swap, onceKey: key }),
   recordSighting: (propId: string, sighting: NewSighting, key: string) =>
     request<Sighting>('POST', `/props/${propId}/sightings`, { json: sighting, onceKey: key }),
   undo: (propId: string, entryId: string) => request<unknown>('DELETE', `/props/${propId}/log/${entryId}`),
 };
-
-export type LogPage = { entries: LogEntry[]; nextBefore: string | null };

@@ -54,7 +54,7 @@ export function PropPage({ propId }: { propId: string }) {
   const line = siteForecast.value?.props.find((one) => one.propId === propId) ?? null;
   const nextRound = siteForecast.value?.nextRound ?? null;
   // A day before the last deed may be asked for: what was recorded after it has not happened yet.
-  const entries = (log.value?.entries ?? []).filter(
+  const entries = (log.value ?? []).filter(
     (entry) => entry.undoneAt === undefined && Date.parse(entry.at) <= momentAt,
   );
 

@@ -2,15 +2,14 @@ import type { FastifyInstance } from 'fastify';
 import { Type } from 'typebox';
 import type { Deps } from '../../actions/deps.ts';
 import { entryOf } from '../../actions/find-entry.ts';
-import { type LogPlace, listLog } from '../../actions/list-log.ts';
+import { listLog } from '../../actions/list-log.ts';
 import { once } from '../../actions/once.ts';
 import { recordSighting } from '../../actions/record-sighting.ts';
 import { recordSwap } from '../../actions/record-swap.ts';
 import { undoEntry } from '../../actions/undo-entry.ts';
-import { formatInstant, parseInstant } from '../../model/evening.ts';
 import { entryAnswer } from '../answers.ts';
 import { instantOf } from '../bodies.ts';
-import { HttpProblem } from '../problems.ts';
+import { pageOf } from '../paging.ts';
 import { ReplayHeaders, replayOf, sendOnce } from '../replay.ts';
 import { ref } from '../responses.ts';
 import { LogQuery, NewSighting, NewSwap, Sighting, Swap } from '../schemas/log.ts';
@@ -19,13 +18,6 @@ type OfProp = { Params: { propId: string } };
 type OfEntry = { Params: { propId: string; entryId: string } };
 
 const AnyEntry = Type.Union([ref(Swap), ref(Sighting)]);
-const LogPage = Type.Object({
-  entries: Type.Array(AnyEntry),
-  nextBefore: Type.Union([Type.String(), Type.Null()], {
-    description: '`before` of the next page; null at the end.',
-  }),
-});
-
 export function logRoutes(app: FastifyInstance, deps: Deps): void {
   app.post<OfProp & { Body: NewSwap }>(
     '/api/props/:propId/swaps',
@@ -81,17 +73,13 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
         operationId: 'listLog',
         summary: 'Swaps and sightings, newest first',
         querystring: LogQuery,
-        response: { 200: LogPage },
+        response: { 200: Type.Array(AnyEntry) },
       },
     },
-    async (request) => {
-      const { limit = 100, before, undone = false } = request.query;
-      const from = before === undefined ? {} : { before: placeOf(before) };
-      const page = listLog(deps, { ...request.params, limit, undone, ...from });
-      return {
-        entries: page.entries.map((entry) => entryAnswer(entry)),
-        nextBefore: page.nextBefore && `${formatInstant(page.nextBefore.at)}~${page.nextBefore.id}`,
-      };
+    async (request, reply) => {
+      const { limit = 100, undone = false, ...from } = request.query;
+      const found = listLog(deps, { ...request.params, ...from, limit: limit + 1, undone });
+      return pageOf(found, { limit, request, reply }).map((entry) => entryAnswer(entry));
     },
   );
 
@@ -118,12 +106,4 @@ export function logRoutes(app: FastifyInstance, deps: Deps): void {
     },
     async (request) => entryAnswer(undoEntry(deps, request.params)),
   );
-}
-
-function placeOf(before: string): LogPlace {
-  const [moment = '', id] = before.split('~');
-  const at = parseInstant(moment);
-  if (at !== null && id) return { at, id };
-  const message = 'before is not where a page ended. Take it from nextBefore of the page before, unchanged.';
-  throw new HttpProblem('invalid', message, { faults: [{ field: 'before', message }] });
 }

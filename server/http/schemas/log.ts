@@ -44,7 +44,7 @@ export const LogEntry = Type.Union([Swap, Sighting]);
 export const LogQuery = Type.Object(
   {
     limit: Type.Optional(whole(1, 500)),
-    before: Type.Optional(Type.String({ maxLength: 200, description: '`nextBefore` of the page before.' })),
+    after: Type.Optional(Id),
     undone: Type.Optional(Type.Boolean({ description: 'Also what was undone.' })),
   },
   closed,
