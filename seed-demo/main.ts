@@ -1,15 +1,24 @@
 import { spawn } from 'node:child_process';
 import { rmSync } from 'node:fs';
+import { createServer } from 'node:net';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { forecastSite } from '../server/actions/forecast-site.ts';
-import { packageRoot } from '../server/config.ts';
+import { packageRoot, readConfig } from '../server/config.ts';
 import { parseInstant } from '../server/model/evening.ts';
 import { eveningWords } from '../server/planning/evening-words.ts';
 import { openStore } from '../server/store/open.ts';
 import { demoDeps } from './deps.ts';
 import { DEMO_AS_OF, playSeason } from './season.ts';
 import { swapTable } from './swap-table.ts';
+
+const { port, host } = readConfig();
+if (!(await isFree(port, host))) {
+  console.error(
+    `Port ${port} is in use already, perhaps by another demo. Close that, or set DUSKROUND_PORT.`,
+  );
+  process.exit(1);
+}
 
 // A fresh demo each time: the same bytes whenever it is run. Your own database is never touched.
 const db = path.join(packageRoot(), 'data', 'demo.db');
@@ -34,3 +43,12 @@ const child = spawn(process.execPath, [server], {
 });
 for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => child.kill(signal));
 child.on('exit', (code) => process.exit(code ?? 0));
+
+/** Asked before anything is thrown away: another demo may be serving the file. */
+function isFree(wanted: number, at: string): Promise<boolean> {
+  return new Promise((resolve) => {
+    const probe = createServer();
+    probe.once('error', () => resolve(false));
+    probe.listen(wanted, at, () => probe.close(() => resolve(true)));
+  });
+}
