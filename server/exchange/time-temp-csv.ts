@@ -29,7 +29,7 @@ export type TimeTempHeader = {
 const HEADER_WITHIN_LINES = 30;
 const MOST_ROWS = 600_000;
 /** Air outdoors stays within these everywhere on Earth. */
-const COLDEST_C = -70;
+export const COLDEST_C = -70;
 export const HOTTEST_C = 60;
 const HOTTEST_F = 140;
 const TIME_NAMES = [

@@ -1,15 +1,10 @@
 import type { TypicalYear } from '../model/climate.ts';
-import {
-  addEvenings,
-  eveningOf,
-  HOUR_MS,
-  type Instant,
-  standardOffsetHours,
-  wallTimeOf,
-} from '../model/evening.ts';
+import { addEvenings, eveningOf, HOUR_MS, type Instant, wallTimeOf } from '../model/evening.ts';
 import type { ObservedHours } from '../model/weather.ts';
-import { readEpw, type Station } from './epw.ts';
+import { readEpw } from './epw.ts';
+import { isGhcnDailyCsv, readGhcnDailyCsv } from './ghcn-daily-csv.ts';
 import { hoursOfReadings } from './hourly-readings.ts';
+import { offsetWarning, placeWarning, type Station, siteOffsetHours } from './station.ts';
 import {
   findTimeTempHeader,
   HOTTEST_C,
@@ -17,15 +12,17 @@ import {
   readTimeTempRows,
   type TimeTempHeader,
 } from './time-temp-csv.ts';
+import { isTmy3Csv, readTmy3Csv } from './tmy3-csv.ts';
 import { type RejectedLine, type RejectedLines, WeatherFileError } from './weather-file-error.ts';
 import { phaseWarning } from './weather-phase.ts';
+import { refuseStrangers } from './weather-strangers.ts';
 
 export { WeatherFileError };
 
 /** What a weather file holds; exactly one of `typicalYear` and `hours` is there. */
 export type WeatherFile = {
-  format: 'epw' | 'time-temp';
-  /** Lines whose temperature is used. */
+  format: 'epw' | 'tmy3' | 'ghcn-daily' | 'time-temp';
+  /** Lines whose temperature is used; days with a low and a high where the file has days. */
   rows: number;
   /** Lines left out, at most the first hundred. */
   rejected: RejectedLine[];
@@ -42,23 +39,22 @@ export type WeatherFileSite = {
   timeZone: string;
   latitudeDeg: number;
   longitudeDeg: number;
-  /** What the temperatures of a time,temp CSV are in; asked for when they look like °F. */
+  /** What the temperatures are in where the file does not say; asked for when they look like °F. */
   unit?: 'C' | 'F';
   /** Called now and then with the share done, 0..1. */
   onProgress?: (share: number) => void;
 };
 
 const LONGEST_LINE = 20_000;
-/** Any recent year does: zones seldom change their standard time. */
-const OFFSET_YEAR = 2025;
 /** From this share of readings above 60 on, they are not taken for °C. Ours. */
 const HOT_SHARE = 0.01;
 /** No place on Earth has half its readings above this, °C. */
 const HOTTEST_MEDIAN_C = 42;
 
 /**
- * Reads a weather file; the format is told by what is in it, never by its name. EPW gives a typical year, a CSV with a
- * time and a temperature column gives hours. See `readEpw` and `readTimeTempRows` for how each is read.
+ * Reads a weather file; the format is told by what is in it, never by its name. EPW and TMY3 give a typical year;
+ * GHCN-Daily and a CSV with a time and a temperature column give hours. See `readEpw`, `readTmy3Csv`,
+ * `readGhcnDailyCsv` and `readTimeTempRows` for how each is read.
  * @param text the whole file, UTF-8 or latin-1
  * @param site where it is meant for: IANA zone, degrees north and east
  * @throws WeatherFileError with a sentence for a person, when the file is of no known format or not usable
@@ -74,14 +70,16 @@ export function readWeatherFile(text: string, site: WeatherFileSite): WeatherFil
         'Likely the line ends were lost, or it is another kind of file: save it again as plain CSV or EPW.',
     );
   }
-  if (/^LOCATION,/i.test(lines[0]!)) return epwFile(lines, site);
-  refuseKnownStrangers(lines);
+  if (/^LOCATION,/i.test(lines[0]!)) return typicalYearFile('epw', { lines, site });
+  if (isTmy3Csv(lines)) return typicalYearFile('tmy3', { lines, site });
+  if (isGhcnDailyCsv(lines)) return ghcnDailyFile(lines, site);
+  refuseStrangers(lines);
   const header = findTimeTempHeader(lines);
   if (header) return timeTempFile(plain, { header, site });
   const first = lines.find((line) => line.trim() !== '')!;
   throw new WeatherFileError(
-    `The file starts with "${first.trim().slice(0, 80)}", which is neither an EPW header nor a heading with a time and a ` +
-      'temperature column. Put a first line "time,tempC" above lines such as "2026-10-25T18:00Z,4.5".',
+    `The file starts with "${first.trim().slice(0, 80)}", which is no heading of EPW, TMY3 or GHCN-Daily, nor one with ` +
+      'a time and a temperature column. Put a first line "time,tempC" above lines such as "2026-10-25T18:00Z,4.5".',
   );
 }
 
@@ -102,81 +100,26 @@ function checkIsText(text: string): void {
   }
 }
 
-/** Formats that are known but not read here: how to tell each, and the way out. */
-const STRANGERS: { sign: RegExp; found: string; wayOut: string }[] = [
-  {
-    sign: /^\s*<(?:!doctype|html|\?xml)/i,
-    found: 'a web page or XML',
-    wayOut: 'Download the data file itself: the link led to a page.',
-  },
-  { sign: /^\s*[[{]/, found: 'JSON', wayOut: 'Write it as "time,tempC" lines.' },
-  {
-    sign: /^[^\n]*\n?[^\n]*Date \(MM\/DD\/YYYY\),Time \(HH:MM\)/,
-    found: 'a TMY3 CSV',
-    wayOut: 'Send the EPW file of the same station, which holds the same year.',
-  },
-  {
-    sign: /^Latitude \(decimal degrees\)|time\(UTC\),T2m/,
-    found: 'a PVGIS typical-year CSV',
-    wayOut: 'Choose EPW as the output where you downloaded it, and send that.',
-  },
-  {
-    sign: /^\d{4} \d{2} \d{2} \d{2}(?: +-?\d+){3}/,
-    found: 'ISD-Lite rows, in tenths of a degree and UTC',
-    wayOut: 'Write them as "time,tempC": 2026-10-25T18:00Z and the fifth column divided by 10.',
-  },
-  {
-    sign: /\bTMAX\b.*\bTMIN\b|\bTMIN\b.*\bTMAX\b|^\w{11},\d{8},(?:TMAX|TMIN|PRCP)/,
-    found: 'daily highs and lows (GHCN-Daily)',
-    wayOut: 'Type the nights that matter, or send hourly readings as "time,tempC".',
-  },
-  {
-    sign: /HourlyDryBulbTemperature/,
-    found: 'a Local Climatological Data CSV, in local standard time',
-    wayOut: 'Write its FM-15 rows as "time,tempC", each time with the offset of standard time.',
-  },
-  {
-    sign: /MESS_DATUM/,
-    found: 'a DWD station file, in UTC',
-    wayOut: 'Write MESS_DATUM and TT_TU as "time,tempC" with a Z on each time, and leave out -999.',
-  },
-  {
-    sign: /Tid \(UTC\)/,
-    found: 'an SMHI station file, in UTC',
-    wayOut: 'Write date, time and Lufttemperatur as "time,tempC" with a Z on each time.',
-  },
-  {
-    sign: /HORA \(?UTC|TEMPERATURA DO AR/i,
-    found: 'an INMET station file, in UTC with decimal commas',
-    wayOut: 'Write it as "time;tempC", as in 2026-10-25T18:00Z;4,5.',
-  },
-];
-
-function refuseKnownStrangers(lines: readonly string[]): void {
-  const start = lines.slice(0, 30).join('\n').slice(0, 20_000);
-  const stranger = STRANGERS.find(({ sign }) => sign.test(start));
-  if (stranger) {
-    throw new WeatherFileError(
-      `This looks like ${stranger.found}, which is not read here. ${stranger.wayOut}`,
-    );
-  }
-}
-
-function epwFile(lines: readonly string[], site: WeatherFileSite): WeatherFile {
-  const { station, typicalYear, rows, rejected, warnings } = readEpw(lines, site.onProgress ?? ignore);
+function typicalYearFile(
+  format: 'epw' | 'tmy3',
+  { lines, site }: { lines: readonly string[]; site: WeatherFileSite },
+): WeatherFile {
+  const read = format === 'epw' ? readEpw : readTmy3Csv;
+  const { station, typicalYear, rows, rejected, warnings } = read(lines, site.onProgress ?? ignore);
   const offsetHours = typicalYear.standardOffsetHours;
   const phase = phaseWarning(
     { startAt: -offsetHours * HOUR_MS, tempC: typicalYear.tempC },
     { longitudeDeg: station.longitudeDeg, offsetHours },
   );
   return {
-    format: 'epw',
+    format,
     rows,
     rejected: rejected.listed,
     station,
     warnings: [
       ...warnings,
-      ...stationWarnings(station, { offsetHours, site }),
+      ...present(placeWarning(station, site)),
+      ...present(offsetWarning(offsetHours, site.timeZone)),
       ...present(phase),
       ...rejected.warnings(),
     ],
@@ -187,31 +130,22 @@ function epwFile(lines: readonly string[], site: WeatherFileSite): WeatherFile {
   };
 }
 
-function stationWarnings(
-  station: Station,
-  { offsetHours, site }: { offsetHours: number; site: WeatherFileSite },
-): string[] {
-  const warnings: string[] = [];
-  const { latitudeDeg, longitudeDeg } = station;
-  const apartDeg = Math.abs(((longitudeDeg - site.longitudeDeg + 540) % 360) - 180);
-  if (Math.abs(latitudeDeg - site.latitudeDeg) > 1 || apartDeg > 1) {
-    const isMirrored = Math.abs(longitudeDeg + site.longitudeDeg) < 1 && Math.abs(longitudeDeg) > 1;
-    warnings.push(
-      `The station ${station.name} stands at ${latitudeDeg}, ${longitudeDeg}, more than 1° from the site at ` +
-        `${site.latitudeDeg}, ${site.longitudeDeg}. ` +
-        (isMirrored
-          ? 'Likely the sign of a longitude: east is positive, west negative.'
-          : 'Choose a nearer station, or check the site.'),
-    );
-  }
-  const siteOffsetHours = standardOffsetHours(site.timeZone, OFFSET_YEAR);
-  if (Math.abs(offsetHours - siteOffsetHours) > 0.01) {
-    warnings.push(
-      `The file keeps UTC${signed(offsetHours)} and ${site.timeZone} has UTC${signed(siteOffsetHours)} as standard time. ` +
-        'The hours are read by the file; check that it is for this site.',
-    );
-  }
-  return warnings;
+function ghcnDailyFile(lines: readonly string[], site: WeatherFileSite): WeatherFile {
+  const { station, hours, rows, rejected, warnings, from, through } = readGhcnDailyCsv(lines, {
+    ...site,
+    onProgress: site.onProgress ?? ignore,
+  });
+  return {
+    format: 'ghcn-daily',
+    rows,
+    rejected: rejected.listed,
+    ...(station ? { station } : {}),
+    warnings: [...warnings, ...present(station && placeWarning(station, site)), ...rejected.warnings()],
+    typicalYear: null,
+    hours,
+    from,
+    through,
+  };
 }
 
 function timeTempFile(
@@ -229,7 +163,7 @@ function timeTempFile(
   if (site.unit === undefined && header.unit === null) refuseFahrenheit(readings, hotRows);
   if (readings.length === 0) throw new WeatherFileError(nothingReadable(rejected));
   const { hours, kept, warnings: more } = hoursOfReadings(readings, rejected);
-  const offsetHours = standardOffsetHours(timeZone, OFFSET_YEAR);
+  const offsetHours = siteOffsetHours(timeZone);
   return {
     format: 'time-temp',
     rows: kept.length,
@@ -284,10 +218,6 @@ function localDate(at: Instant, timeZone: string): string {
 
 function present(warning: string | null): string[] {
   return warning === null ? [] : [warning];
-}
-
-function signed(hours: number): string {
-  return `${hours < 0 ? '-' : '+'}${Math.abs(hours)}`;
 }
 
 function ignore(): void {}

@@ -14,11 +14,12 @@ export type MonthlyExtremes = { monthlyMinC: readonly number[]; monthlyMaxC: rea
  */
 export type TypicalYear = { standardOffsetHours: number; tempC: Float32Array };
 
+/** Where a day takes its course under the Sun; prepared once by `dayCourseAt`. */
+export type DayCourse = { sinLatitude: number; cosLatitude: number; longitudeDeg: number };
+
 type MonthsClimate = {
   kind: 'months';
-  sinLatitude: number;
-  cosLatitude: number;
-  longitudeDeg: number;
+  course: DayCourse;
   minKnotsC: Float64Array;
   maxKnotsC: Float64Array;
   monthlySigmaC: Float64Array;
@@ -141,7 +142,6 @@ export function climateOf(options: {
   longitudeDeg: number;
 }): Climate {
   const { monthlyMinC, monthlyMaxC, latitudeDeg, longitudeDeg } = options;
-  checkPosition(latitudeDeg, longitudeDeg);
   check(
     monthlyMinC.length === 12 && monthlyMaxC.length === 12,
     'a climate needs twelve minima and twelve maxima',
@@ -156,9 +156,7 @@ export function climateOf(options: {
   }
   return {
     kind: 'months',
-    sinLatitude: Math.sin((latitudeDeg / 360) * TURN),
-    cosLatitude: Math.cos((latitudeDeg / 360) * TURN),
-    longitudeDeg,
+    course: dayCourseAt({ latitudeDeg, longitudeDeg }),
     minKnotsC: meanPreservingKnots(monthlyMinC),
     maxKnotsC: meanPreservingKnots(monthlyMaxC),
     monthlySigmaC: monthlySigma(options),
@@ -254,11 +252,44 @@ export function climateTemperatureC(climate: Climate, at: Instant): number {
 }
 
 function monthsTemperature(climate: MonthsClimate, at: Instant): number {
-  const localDays = (at - YEAR_2000_AT) / DAY_MS + climate.longitudeDeg / 360;
+  const localDays = (at - YEAR_2000_AT) / DAY_MS + climate.course.longitudeDeg / 360;
   const months = betweenMonths(positiveShare(localDays / 365.25));
   const minC = curveAt(climate.minKnotsC, months);
   const maxC = curveAt(climate.maxKnotsC, months);
+  return dayTemperatureC(climate.course, { minC, maxC }, at);
+}
 
+/**
+ * Prepares a place for `dayTemperatureC`.
+ * @param position degrees north and east
+ * @throws ProgrammerError for a position off the Earth
+ */
+export function dayCourseAt(position: { latitudeDeg: number; longitudeDeg: number }): DayCourse {
+  const { latitudeDeg, longitudeDeg } = position;
+  checkPosition(latitudeDeg, longitudeDeg);
+  return {
+    sinLatitude: Math.sin((latitudeDeg / 360) * TURN),
+    cosLatitude: Math.cos((latitudeDeg / 360) * TURN),
+    longitudeDeg,
+  };
+}
+
+/**
+ * Air temperature at an instant of a day whose low and high are known, °C: two harmonics in true solar time.
+ * Their range is less than high - low, because daily extremes hold weather as well as sun; so the curve reaches
+ * neither of them. A high below its low counts as equal to it.
+ * Source: shape and amplitude fitted on 60 US stations and 269 typical years; with the low and the high of every day
+ * the mean of one night was 1.57 K (RMSE) off 62 stations, of a month 0.53 K.
+ * @param course from `dayCourseAt`
+ * @param extremes low and high about that instant, °C: mean daily ones of the season, or those of the days around it
+ * @param at epoch milliseconds, 1900..2199
+ */
+export function dayTemperatureC(
+  course: DayCourse,
+  { minC, maxC }: { minC: number; maxC: number },
+  at: Instant,
+): number {
+  const localDays = (at - YEAR_2000_AT) / DAY_MS + course.longitudeDeg / 360;
   const day = Math.floor(at / DAY_MS);
   const days = at / DAY_MS - day;
   const sunDay = sunDayOf(day);
@@ -268,7 +299,7 @@ function monthsTemperature(climate: MonthsClimate, at: Instant): number {
 
   const sinDeclination = sinDeclinationIn(sunDay, days);
   const noonSine =
-    climate.sinLatitude * sinDeclination + climate.cosLatitude * Math.sqrt(1 - sinDeclination ** 2);
+    course.sinLatitude * sinDeclination + course.cosLatitude * Math.sqrt(1 - sinDeclination ** 2);
   const rangeC = Math.max(0, maxC - minC);
   const cycleC = Math.max(0.35 * rangeC, rangeC - (2.7 - 1.7 * Math.max(0, noonSine)));
   return (minC + maxC) / 2 + (cycleC * shape) / SHAPE_RANGE;
