@@ -142,12 +142,14 @@ function waitsForSomething(prop: Prop): boolean {
   );
 }
 
-function switchingDefaults(prop: Prop): string[] {
-  const { switching } = prop;
+function switchingDefaults({ switching }: Prop): string[] {
   if (switching.kind !== 'light-sensor') return [];
-  return switching.onLux === undefined && switching.onAltitudeDeg === undefined
-    ? ['switching.onAltitudeDeg']
-    : [];
+  const { onLux, onAltitudeDeg, skyShare } = switching;
+  const byLux = onAltitudeDeg === undefined;
+  return [
+    ...(byLux && onLux === undefined ? ['switching.onAltitudeDeg'] : []),
+    ...(byLux && onLux !== undefined && skyShare === undefined ? ['switching.skyShare'] : []),
+  ];
 }
 
 /** The lower of the prop's dim volts and the volts below which one stops with these cells. */
