@@ -123,6 +123,8 @@ describe('a prop', () => {
     await page.getByRole('button', { name: /^Record swap/ }).click();
     await page.waitForSelector('.notice-done');
     const said = await textOf('.notice-done p');
+    // On a phone the button is far below: what it did must come into sight.
+    await expect.poll(() => page.evaluate('scrollY')).toBeLessThan(600);
     expect(said).toMatch(/^Swap recorded\. Dim: was .+, now .+\.$/);
     // What the page says moved is what the service answers now.
     const after = (await (
@@ -158,7 +160,7 @@ describe('a prop', () => {
     const factors = [...gives!.matchAll(/× ([\d.]+)/g)].map(([, factor]) => Number(factor));
     expect(factors.length).toBeGreaterThan(1);
     const redone = factors.reduce((product, factor) => product * factor, label);
-    // users.md: redoing it on paper agrees to within 2 %.
+    // What was asked for: redoing it on paper agrees to within 2 %.
     expect(Math.abs(redone / stated - 1)).toBeLessThan(0.02);
   });
 

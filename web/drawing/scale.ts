@@ -35,13 +35,14 @@ export function eveningScale(span: { from: string; through: string }, range: [nu
 }
 
 /**
- * The evenings that get a label: every one where there is room, else Mondays, else the first of each month.
+ * The evenings that get a label: as many as there is room for, evenly apart; over a longer season whole weeks apart, on
+ * Mondays.
  * @param widthEach pixels a label needs
  */
 export function labelledEvenings(evenings: string[], columnWidth: number, widthEach = 30): string[] {
-  if (columnWidth >= widthEach) return evenings;
+  const step = Math.max(1, Math.ceil(widthEach / columnWidth));
+  if (step <= 4 || evenings.length < 14) return evenings.filter((_, index) => index % step === 0);
+  const weeks = Math.ceil(step / 7);
   const mondays = evenings.filter((evening) => new Date(`${evening}T00:00:00Z`).getUTCDay() === 1);
-  if (evenings.length < 8 || mondays.length === 0) return evenings.slice(0, 1);
-  if (columnWidth * 7 >= widthEach) return mondays;
-  return mondays.filter((_, index) => index % 2 === 0);
+  return mondays.filter((_, index) => index % weeks === 0);
 }

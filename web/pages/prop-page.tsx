@@ -1,5 +1,5 @@
 import type { ComponentChildren } from 'preact';
-import { useState } from 'preact/hooks';
+import { useEffect, useRef, useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
 import type {
   CellType,
@@ -141,8 +141,11 @@ function PropHead({ prop }: { prop: Prop }) {
 }
 
 function DoneNotice({ done, onUndo }: { done: Done; onUndo: (entryId: string) => void }) {
+  const notice = useRef<HTMLDivElement>(null);
+  // On a phone the deed is done far below: whoever did it should see the date move.
+  useEffect(() => notice.current?.scrollIntoView({ block: 'nearest' }), [done]);
   return (
-    <div class="notice notice-done">
+    <div class="notice notice-done" ref={notice}>
       <p>{done.text}</p>
       {done.hints.map((hint) => (
         <p key={hint}>{hint}</p>
@@ -183,9 +186,7 @@ function PropAnswer({ forecast, line, tonight }: AnswerProps) {
         <Fact name="Goes dark">{rangeWords(forecast.dark, tonight)}</Fact>
         {forecast.usedShare !== null && <Fact name="Used">{percent(forecast.usedShare)}</Fact>}
         {forecast.cause && (
-          <Fact name="Because">
-            {forecast.cause === 'cold' ? 'of the cold, not the cells' : 'it is used up'}
-          </Fact>
+          <Fact name="Because">{forecast.cause === 'cold' ? 'the cold' : 'charge used up'}</Fact>
         )}
       </dl>
       {forecast.cause === 'cold' && (

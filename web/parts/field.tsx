@@ -22,7 +22,7 @@ export function TextField(props: TextFieldProps) {
     <div class={`field${width === 'short' ? ' field-short' : ''}`}>
       <label for={id}>
         {label}
-        {optional && <span class="field-optional"> if known</span>}
+        {optional && <span class="field-optional"> optional</span>}
       </label>
       <span class="field-line">
         <input

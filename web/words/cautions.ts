@@ -18,7 +18,7 @@ const LITHIUM_ION = [
   'A swollen, dropped, dented or wet pack does not go back on charge. No loose cells in a pocket with keys.',
 ];
 
-/** After users' accounts and public safety advice; own words. */
+/** After public safety advice; own words. */
 const BY_KIND: Record<CellType['kind'], string[]> = {
   alkaline: [
     MIXING,
