@@ -33,7 +33,19 @@ export async function serve(config: Config, given: { store?: Store; clock?: Cloc
   const { port } = app.server.address() as AddressInfo;
   const url = `http://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}/`;
   say(`Duskround serves ${config.db} at ${url}`);
+  await reckonAhead(app);
   return { url, close };
+}
+
+/** Sites whose forecast is reckoned before anybody asks: the first answer of a fresh process would be its slowest. */
+const SITES_AHEAD = 3;
+
+async function reckonAhead(app: ReturnType<typeof buildApp>): Promise<void> {
+  const headers = { host: 'localhost' };
+  const sites = await app.inject({ url: `/api/sites?limit=${SITES_AHEAD}`, headers });
+  for (const { id } of sites.json<{ id: string }[]>()) {
+    await app.inject({ url: `/api/sites/${id}/forecast`, headers });
+  }
 }
 
 /**

@@ -107,7 +107,7 @@ const RULES: Rule[] = [
   },
   {
     room: 'web',
-    may: [/^web\//, npm('preact', 'd3-scale', 'd3-shape')],
+    may: [/^web\//, npm('preact')],
     types: [/^server\/http\/schemas\//],
     because: 'a page knows the service by its answers alone',
   },

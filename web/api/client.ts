@@ -98,7 +98,8 @@ export const api = {
     request<Site>('PATCH', `/sites/${siteId}`, { json: changes }),
   nights: (siteId: string, asOf: AsOf) =>
     request<Night[]>('GET', `/sites/${siteId}/nights`, { query: { asOf } }),
-  showNights: (siteId: string) => request<ShowNight[]>('GET', `/sites/${siteId}/show-nights`),
+  showNights: (siteId: string, asOf: AsOf) =>
+    request<ShowNight[]>('GET', `/sites/${siteId}/show-nights`, { query: { asOf } }),
   setShowNights: (siteId: string, nights: ShowNight[]) =>
     request<ShowNight[]>('PUT', `/sites/${siteId}/show-nights`, { json: nights }),
   importWeather: (siteId: string, file: Blob) =>

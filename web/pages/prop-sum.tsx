@@ -54,7 +54,7 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
         </Step>
         <Step title="It drains at" result={`${drainFactor.likely.toFixed(2)} × the sum`}>
           between {drainFactor.low.toFixed(2)} and {drainFactor.high.toFixed(2)} times, four times in five:
-          from what was seen so far
+          from how the draw was measured and how much brands differ
         </Step>
         <Step title="So it looks dim" result={rangeWords(forecast.dim, tonight)}>
           {why.mahTonight > 0 && usableMah !== null && usedMah !== null

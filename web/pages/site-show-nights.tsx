@@ -5,11 +5,13 @@ import { TextField } from '../parts/field.tsx';
 import { FormTrouble, Status, Trouble } from '../parts/notice.tsx';
 import { useForm } from '../state/form.ts';
 import { useRead } from '../state/read.ts';
+import { useShell } from '../state/shell.tsx';
 import { addDays, dateWords } from '../words/time.ts';
 
 /** The evenings visitors come, with gate hours; one may be called off or put in late. Every deed is kept at once. */
 export function SiteShowNights({ site, onSaved }: { site: Site; onSaved: () => void }) {
-  const read = useRead(`show-nights ${site.id}`, () => api.showNights(site.id));
+  const { asOf } = useShell();
+  const read = useRead(`show-nights ${site.id} ${asOf}`, () => api.showNights(site.id, asOf));
   const form = useForm({ evening: '', opensAt: '', closesAt: '' });
   const [said, setSaid] = useState('');
   const nights = read.value ?? [];

@@ -41,7 +41,9 @@ describe('a wick', () => {
         expect(geometry === null).toBe(values.leftShare === null);
         if (!geometry) return;
         const { strandShares, hatchedFrom, hatchedThrough } = geometry;
-        expect(strandShares).toEqual(strandShares.toSorted((one, other) => one - other));
+        strandShares.slice(1).forEach((share, rank) => {
+          expect(share).toBeGreaterThanOrEqual(strandShares[rank]! - 1e-9);
+        });
         expect(hatchedThrough).toBeGreaterThanOrEqual(hatchedFrom);
         for (const share of [...strandShares, hatchedFrom, hatchedThrough]) {
           expect(share).toBeGreaterThanOrEqual(0);
