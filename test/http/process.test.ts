@@ -83,10 +83,8 @@ test('what was acknowledged survives kill -9, and its replay is still known', as
   await ended;
 
   const second = await listening(settings);
-  const log = (await (await fetch(`${second.url}/api/props/${prop.id}/log`)).json()) as {
-    entries: unknown[];
-  };
-  expect(log.entries).toEqual([swapped]);
+  const log = await (await fetch(`${second.url}/api/props/${prop.id}/log`)).json();
+  expect(log).toEqual([swapped]);
   const again = await sent(`${second.url}/api/props/${prop.id}/swaps`, swap, { 'idempotency-key': 'k' });
   expect(again).toEqual(swapped);
   const stopped = once(second.child, 'exit');

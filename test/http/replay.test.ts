@@ -12,7 +12,7 @@ const swapWith = (rig: Rig, propId: string, key: string, body: object = SWAP) =>
   rig.ask.post(`/api/props/${propId}/swaps`).set('idempotency-key', key).send(body);
 
 const entriesOf = async (rig: Rig, propId: string) =>
-  (await rig.ask.get(`/api/props/${propId}/log`).expect(200)).body.entries;
+  (await rig.ask.get(`/api/props/${propId}/log`).expect(200)).body;
 
 test('eight tries at once are one swap, and all get its answer', async () => {
   const rig = await aRig();
