@@ -39,5 +39,5 @@ export function drainFactorRange(belief: Belief): { low: number; likely: number;
 export function chanceBelow(belief: Belief, threshold: number, thresholdSpread: number): number {
   if (threshold === Infinity) return 1;
   if (threshold <= 0) return 0;
-  return normalCdf(Math.log(threshold) / Math.hypot(belief.spread, thresholdSpread));
+  return normalCdf(Math.log(threshold) / Math.sqrt(belief.spread ** 2 + thresholdSpread ** 2));
 }

@@ -29,22 +29,22 @@ export type SetCourse = {
 export type Depletion = {
   count: number;
   limits: LimitTables;
-  litHours: Float64Array;
+  litHours: number[];
   /** Used at the end of the evening if the sum is right, mAh; it stands still while the prop is dark. */
-  usedMah: Float64Array;
+  usedMah: number[];
   /** Charge this evening takes by the likely course if the set lasts it out, mAh. */
-  eveningMah: Float64Array;
+  eveningMah: number[];
   /** Air at the moment of the evening that decides (where least is left to the dim limit), offset included, °C. */
-  decidingC: Float64Array;
+  decidingC: number[];
   /** Drain factor below which it is bright, and lit, through the whole evening; Infinity where it is not lit at all. */
-  brightBelow: Float64Array;
-  litBelow: Float64Array;
+  brightBelow: number[];
+  litBelow: number[];
   /** Share of the evening's lit time after which it goes dim, by the likely course; 1 = bright to the end. */
-  brightShare: Float64Array;
+  brightShare: number[];
   /** What the likely course does: an index into COURSE_WORDS. */
-  likely: Uint8Array;
-  /** 1 where the likely course goes dim although a mild night would have kept it bright and left a night to spare. */
-  dimByCold: Uint8Array;
+  likely: number[];
+  /** Whether the likely course goes dim although a mild night would have kept it bright and left a night to spare. */
+  dimByCold: boolean[];
 };
 
 export const COURSE_WORDS = ['bright', 'dim', 'dark-cold', 'dark-used-up', 'not-lit'] as const;
@@ -79,42 +79,49 @@ const LIKELY = 4;
 export function deplete(set: SetCourse): Depletion {
   const count = set.schedule.count - set.start;
   check(count > 0, 'the set goes in after the season');
-  const row = rowsOf(7, count);
   const out: Depletion = {
     count,
     limits: limitTables(set),
-    litHours: row(0),
-    usedMah: row(1),
-    eveningMah: row(2),
-    decidingC: row(3),
-    brightBelow: row(4),
-    litBelow: row(5),
-    brightShare: row(6).fill(1),
-    likely: new Uint8Array(count),
-    dimByCold: new Uint8Array(count),
+    litHours: [],
+    usedMah: [],
+    eveningMah: [],
+    decidingC: [],
+    brightBelow: [],
+    litBelow: [],
+    brightShare: [],
+    likely: [],
+    dimByCold: [],
   };
-  const followed = followedFrom(set.drawDown.reckonedOf(set.usedAtStartMah), set.spread);
+  const evening: EveningSheet = {
+    set,
+    out,
+    followed: followFrom(set.drawDown.reckonedOf(set.usedAtStartMah), set.spread),
+    schedule: set.firstEvening,
+    i: 0,
+    litMah: 0,
+    otherMah: 0,
+    looks: LOOKS,
+    least: 0,
+    decidingC: 0,
+  };
+  const { x } = evening.followed;
   for (let n = 0; n < count; n += 1) {
-    const schedule = n === 0 ? set.firstEvening : set.schedule;
-    const i = n === 0 ? 0 : set.start + n;
-    const litMah = set.meanMa * schedule.litHours[i]!;
+    if (n > 0) evening.schedule = set.schedule;
+    evening.i = n === 0 ? 0 : set.start + n;
+    const { schedule, i } = evening;
+    const drawShare = set.drawDown.drawShareAt(x[LIKELY]!);
     const otherMah =
       set.standbyMa * (schedule.poweredHours[i]! - schedule.litHours[i]!) +
       set.mahPerTrip * schedule.trips[i]! +
       set.selfDischargeMah(n, schedule.nightC[i]! + set.offsetC);
-    const drawShare = set.drawDown.drawShareAt(followed.x[LIKELY]!);
-    followEvening({ set, schedule, i, n, followed, out, litMah, otherMah: otherMah / drawShare });
-    out.litHours[n] = schedule.litHours[i]!;
-    out.eveningMah[n] = litMah * drawShare + otherMah;
-    out.usedMah[n] = set.drawDown.usedOf(followed.x[LIKELY]!);
+    evening.litMah = set.meanMa * schedule.litHours[i]!;
+    evening.otherMah = otherMah / drawShare;
+    followEvening(evening);
+    out.litHours.push(schedule.litHours[i]!);
+    out.eveningMah.push(evening.litMah * drawShare + otherMah);
+    out.usedMah.push(set.drawDown.usedOf(x[LIKELY]!));
   }
   return out;
-}
-
-/** Rows of numbers in one piece of memory: a site has thousands of them, and each piece costs. */
-function rowsOf(rows: number, length: number): (index: number) => Float64Array {
-  const block = new Float64Array(rows * length);
-  return (index) => block.subarray(index * length, (index + 1) * length);
 }
 
 /** By drain factor: reckoned charge and how fast it rises with the factor; and of one evening the tightest margins. */
@@ -128,72 +135,137 @@ type Followed = {
   darkSlope: Float64Array;
 };
 
-function followedFrom(startMah: number, spread: number): Followed {
-  const row = rowsOf(7, COUNT);
-  return {
-    factor: row(6).map((_, g) => Math.exp(spread * (g - LIKELY))),
-    x: row(0).fill(startMah),
-    slope: row(1),
-    dimMargin: row(2),
-    dimSlope: row(3),
-    darkMargin: row(4),
-    darkSlope: row(5),
-  };
+const perFactor = () => new Float64Array(COUNT);
+/** The one piece of paper all sets are followed on, one after the other: nothing of it outlives a set. */
+const PAPER: Followed = {
+  factor: perFactor(),
+  x: perFactor(),
+  slope: perFactor(),
+  dimMargin: perFactor(),
+  dimSlope: perFactor(),
+  darkMargin: perFactor(),
+  darkSlope: perFactor(),
+};
+
+function followFrom(startMah: number, spread: number): Followed {
+  PAPER.x.fill(startMah);
+  PAPER.slope.fill(0);
+  for (let g = 0; g < COUNT; g += 1) PAPER.factor[g] = Math.exp(spread * (g - LIKELY));
+  return PAPER;
 }
 
-type EveningWork = {
-  set: SetCourse;
+/** The sheet on which one evening after the other is worked out; written over, since a site has a million looks. */
+type EveningSheet = {
+  readonly set: SetCourse;
+  readonly out: Depletion;
+  readonly followed: Followed;
   schedule: Schedule;
+  /** The evening's place in its schedule. */
   i: number;
-  n: number;
-  followed: Followed;
-  out: Depletion;
   /** Reckoned charge of the evening: while lit, and the rest. */
   litMah: number;
   otherMah: number;
+  readonly looks: Looks;
+  /** Least margin to the dim limit by the likely course, and the air at that look. */
+  least: number;
+  decidingC: number;
 };
 
-function followEvening(work: EveningWork): void {
-  const { set, schedule, i, n, followed, out, otherMah } = work;
-  const firstCheck = schedule.checkFrom[i]!;
-  const endCheck = schedule.checkFrom[i + 1]!;
-  followed.dimMargin.fill(Infinity);
-  followed.darkMargin.fill(Infinity);
-  out.decidingC[n] = schedule.nightC[i]! + set.offsetC;
-  let doneMah = 0;
-  let least = Infinity;
-  let before = Infinity;
-  for (let c = firstCheck; c < endCheck; c += 1) {
-    const airC = schedule.checkAirC[c]! + set.offsetC;
-    const dimLimit = limitAt(out.limits.dim, airC);
-    const byNowMah = set.meanMa * schedule.checkLitHours[c]! + otherMah * schedule.checkGoneShare[c]!;
-    const stepMah = byNowMah - doneMah;
-    const margin = dimLimit - followed.x[LIKELY]! - stepMah;
-    look(followed, { stepMah, dimLimit, darkLimit: limitAt(out.limits.dark, airC) });
-    if (margin < least) {
-      least = margin;
-      out.decidingC[n] = airC;
-    }
-    if (margin < 0 && out.brightShare[n] === 1) {
-      out.brightShare[n] = brightShareAt(schedule, { c, firstCheck, endCheck, before, margin });
-    }
-    before = margin;
-    doneMah = byNowMah;
+/** The looks of one evening: the air, the reckoned charge taken by then, and the limits at that air. */
+type Looks = {
+  count: number;
+  airC: Float64Array;
+  byThenMah: Float64Array;
+  dimLimit: Float64Array;
+  darkLimit: Float64Array;
+};
+
+const MOST_LOOKS = 64;
+const perLook = () => new Float64Array(MOST_LOOKS);
+const LOOKS: Looks = {
+  count: 0,
+  airC: perLook(),
+  byThenMah: perLook(),
+  dimLimit: perLook(),
+  darkLimit: perLook(),
+};
+
+function takeLooks({ set, out, schedule, i, otherMah, looks }: EveningSheet): void {
+  const first = schedule.checkFrom[i]!;
+  looks.count = schedule.checkFrom[i + 1]! - first;
+  check(looks.count <= MOST_LOOKS, 'an evening has too many looks');
+  for (let k = 0; k < looks.count; k += 1) {
+    const airC = schedule.checkAirC[first + k]! + set.offsetC;
+    looks.airC[k] = airC;
+    looks.byThenMah[k] =
+      set.meanMa * schedule.checkLitHours[first + k]! + otherMah * schedule.checkGoneShare[first + k]!;
+    looks.dimLimit[k] = limitAt(out.limits.dim, airC);
+    looks.darkLimit[k] = limitAt(out.limits.dark, airC);
   }
-  takeRest(followed, work.litMah + otherMah - doneMah);
-  out.brightBelow[n] = thresholdOf(followed.factor, followed.dimMargin, followed.dimSlope);
-  out.litBelow[n] = thresholdOf(followed.factor, followed.darkMargin, followed.darkSlope);
-  if (endCheck === firstCheck) out.likely[n] = NOT_LIT;
-  else tellLikely(work, least);
 }
 
-/** One look at every followed factor: what it has reached, how much is left, and where the limit stops it. */
-function look(
-  { factor, x, slope, dimMargin, dimSlope, darkMargin, darkSlope }: Followed,
-  at: { stepMah: number; dimLimit: number; darkLimit: number },
-): void {
-  const { stepMah, dimLimit, darkLimit } = at;
-  for (let g = 0; g < COUNT; g += 1) {
+const TOP = COUNT - 1;
+
+function followEvening(evening: EveningSheet): void {
+  const { set, schedule, i, followed, out, looks } = evening;
+  takeLooks(evening);
+  const { count, airC, byThenMah, dimLimit, darkLimit } = looks;
+  followed.dimMargin.fill(Infinity);
+  followed.darkMargin.fill(Infinity);
+  // While even the thirstiest factor stays bright the others need no looking at: they only add up.
+  const from = staysBright(evening, TOP) ? TOP : 0;
+  evening.least = Infinity;
+  evening.decidingC = schedule.nightC[i]! + set.offsetC;
+  let brightShare = 1;
+  let before = Infinity;
+  let doneMah = 0;
+  let likelyMah = followed.x[LIKELY]!;
+  for (let k = 0; k < count; k += 1) {
+    const stepMah = byThenMah[k]! - doneMah;
+    lookAt(evening, { from, k, stepMah });
+    const margin = dimLimit[k]! - likelyMah - stepMah;
+    likelyMah = Math.max(likelyMah, Math.min(likelyMah + stepMah, darkLimit[k]!));
+    if (margin < evening.least) {
+      evening.least = margin;
+      evening.decidingC = airC[k]!;
+    }
+    if (margin < 0 && brightShare === 1) brightShare = brightShareAt(evening, { k, before, margin });
+    before = margin;
+    doneMah = byThenMah[k]!;
+  }
+  if (from === TOP) addUp(followed, doneMah);
+  takeRest(followed, evening.litMah + evening.otherMah - doneMah);
+  out.decidingC.push(evening.decidingC);
+  out.brightShare.push(brightShare);
+  out.brightBelow.push(thresholdOf(followed.factor, followed.dimMargin, followed.dimSlope));
+  out.litBelow.push(thresholdOf(followed.factor, followed.darkMargin, followed.darkSlope));
+  tellLikely(evening);
+}
+
+/** Whether a followed factor is bright at every look of the evening. */
+function staysBright({ followed, looks }: EveningSheet, g: number): boolean {
+  const { count, byThenMah, dimLimit } = looks;
+  for (let k = 0; k < count; k += 1) {
+    if (followed.x[g]! + followed.factor[g]! * byThenMah[k]! > dimLimit[k]!) return false;
+  }
+  return true;
+}
+
+/** What an evening takes below the top factor where nothing is ever stopped. */
+function addUp({ factor, x, slope }: Followed, mah: number): void {
+  for (let g = 0; g < TOP; g += 1) {
+    x[g] = x[g]! + factor[g]! * mah;
+    slope[g] = slope[g]! + mah;
+  }
+}
+
+/** One look at the followed factors: what each has reached, how much is left, and where the limit stops it. */
+function lookAt({ followed, looks }: EveningSheet, at: { from: number; k: number; stepMah: number }): void {
+  const { factor, x, slope, dimMargin, dimSlope, darkMargin, darkSlope } = followed;
+  const dimLimit = looks.dimLimit[at.k]!;
+  const darkLimit = looks.darkLimit[at.k]!;
+  const { stepMah } = at;
+  for (let g = at.from; g < COUNT; g += 1) {
     const reached = x[g]! + factor[g]! * stepMah;
     const rise = slope[g]! + stepMah;
     if (dimLimit - reached < dimMargin[g]!) {
@@ -223,28 +295,30 @@ function takeRest({ factor, x, slope, darkMargin }: Followed, restMah: number): 
   }
 }
 
-/** Share of the evening's looks that had passed when the margin ran out between look c - 1 and look c. */
+/** Share of the evening's lit time that had passed when the margin ran out between look k - 1 and look k. */
 function brightShareAt(
-  schedule: Schedule,
-  at: { c: number; firstCheck: number; endCheck: number; before: number; margin: number },
+  { schedule, i, looks }: EveningSheet,
+  at: { k: number; before: number; margin: number },
 ): number {
   if (at.before === Infinity) return 0;
   const part = at.before / (at.before - at.margin);
-  const whole = schedule.checkLitHours[at.endCheck - 1]!;
-  if (whole === 0) return (at.c - 1 - at.firstCheck + part) / (at.endCheck - 1 - at.firstCheck);
-  const from = schedule.checkLitHours[at.c - 1]!;
-  return (from + (schedule.checkLitHours[at.c]! - from) * part) / whole;
+  const litHours = (k: number) => schedule.checkLitHours[schedule.checkFrom[i]! + k]!;
+  const whole = litHours(looks.count - 1);
+  if (whole === 0) return (at.k - 1 + part) / (looks.count - 1);
+  return (litHours(at.k - 1) + (litHours(at.k) - litHours(at.k - 1)) * part) / whole;
 }
 
-function tellLikely({ followed, out, n, litMah, otherMah }: EveningWork, least: number): void {
-  const { limits } = out;
-  const cold = out.decidingC[n]! < MILD_C;
+function tellLikely({ followed, out, looks, litMah, otherMah, least, decidingC }: EveningSheet): void {
+  const { dim, dark } = out.limits;
+  const cold = decidingC < MILD_C;
   const sparedMah = litMah + otherMah;
-  const atMah = limitAt(limits.dim, out.decidingC[n]!) - least;
-  out.dimByCold[n] = least < 0 && cold && atMah + sparedMah <= limitAt(limits.dim, MILD_C) ? 1 : 0;
-  const darkByCold = cold && followed.x[LIKELY]! + sparedMah <= limitAt(limits.dark, MILD_C);
-  if (followed.darkMargin[LIKELY]! < 0) out.likely[n] = darkByCold ? DARK_COLD : DARK_USED_UP;
-  else out.likely[n] = least < 0 ? DIM : BRIGHT;
+  const atMah = limitAt(dim, decidingC) - least;
+  const isDark = followed.darkMargin[LIKELY]! < 0;
+  const darkByCold = cold && followed.x[LIKELY]! + sparedMah <= limitAt(dark, MILD_C);
+  out.dimByCold.push(least < 0 && cold && atMah + sparedMah <= limitAt(dim, MILD_C));
+  if (looks.count === 0) out.likely.push(NOT_LIT);
+  else if (isDark) out.likely.push(darkByCold ? DARK_COLD : DARK_USED_UP);
+  else out.likely.push(least < 0 ? DIM : BRIGHT);
 }
 
 /**
@@ -252,15 +326,15 @@ function tellLikely({ followed, out, n, litMah, otherMah }: EveningWork, least: 
  * as long as a prop between that factor and the threshold has been dark on the same evenings.
  */
 function thresholdOf(factor: Float64Array, margin: Float64Array, slope: Float64Array): number {
-  if (margin[0] === Infinity) return Infinity;
+  if (margin[TOP] === Infinity) return Infinity;
   let g = 0;
-  while (g < COUNT - 1 && margin[g + 1]! >= 0) g += 1;
+  while (g < TOP && margin[g + 1]! >= 0) g += 1;
   if (slope[g]! <= 0) return margin[g]! >= 0 ? Infinity : 0;
   return Math.max(0, factor[g]! + margin[g]! / slope[g]!);
 }
 
 /** Reckoned charge at which a set is dim, and dark, by temperature. Ask with `limitAt`. */
-export type LimitTables = { dim: Float64Array; dark: Float64Array };
+export type LimitTables = { dim: number[]; dark: number[] };
 
 const TABLE_FROM_C = -40;
 const TABLE_STEP_C = 2;
@@ -268,15 +342,18 @@ const TABLE_SIZE = 46;
 
 /** A limit every 2 K: the steps fall on the corners of the cold tables. */
 function limitTables(set: SetCourse): LimitTables {
-  const table = (usable: UsableShares) =>
-    Float64Array.from({ length: TABLE_SIZE }, (_, k) =>
-      set.drawDown.reckonedOf(usable.usableMahAt(TABLE_FROM_C + k * TABLE_STEP_C)),
-    );
-  return { dim: table(set.dim), dark: table(set.dark) };
+  const tableOf = (usable: UsableShares) => {
+    const table: number[] = [];
+    for (let k = 0; k < TABLE_SIZE; k += 1) {
+      table.push(set.drawDown.reckonedOf(usable.usableMahAt(TABLE_FROM_C + k * TABLE_STEP_C)));
+    }
+    return table;
+  };
+  return { dim: tableOf(set.dim), dark: tableOf(set.dark) };
 }
 
 /** A limit at a temperature, °C, held at the table's ends (-40 and 50). */
-export function limitAt(table: Float64Array, tempC: number): number {
+export function limitAt(table: readonly number[], tempC: number): number {
   const place = Math.min(TABLE_SIZE - 1.001, Math.max(0, (tempC - TABLE_FROM_C) / TABLE_STEP_C));
   const k = Math.floor(place);
   return table[k]! + (table[k + 1]! - table[k]!) * (place - k);

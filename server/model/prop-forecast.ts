@@ -31,8 +31,8 @@ export type PropProjection = {
   belief: Belief;
   leftAtStartShare: number;
   /** Chance bright on this and every earlier evening; chance lit on this evening. By evenings since `from`. */
-  chanceBright: Float64Array;
-  chanceLit: Float64Array;
+  chanceBright: number[];
+  chanceLit: number[];
   schedule: Schedule;
   start: number;
   firstEvening: Schedule;
@@ -195,7 +195,7 @@ function typicalCurrentMa(prop: Prop, load: ReckonedLoad, { total }: Schedule): 
   return totalMah > 0 ? parts.reduce((sum, { ma, mah }) => sum + ma * mah, 0) / totalMah : meanMa;
 }
 
-/** Thresholds this far from the likely draw are certain whatever the night: e to the 6th spread. */
+/** A threshold this many spreads from the likely draw is certain. */
 const CERTAIN_SPREADS = 6;
 /** The widest a threshold's own spread gets: beyond it the cold tables say nothing. */
 const WIDEST_THRESHOLD_SPREAD = 0.5;
@@ -205,35 +205,44 @@ const WIDEST_THRESHOLD_SPREAD = 0.5;
  * may turn out to be and by how well the cold table is known there.
  */
 function chancesOf(of: Omit<PropProjection, 'chanceBright' | 'chanceLit'>) {
-  const { depletion, schedule, start, cellSet, belief } = of;
-  const chanceBright = new Float64Array(depletion.count);
-  const chanceLit = new Float64Array(depletion.count);
-  const certain = Math.exp(CERTAIN_SPREADS * Math.hypot(belief.spread, WIDEST_THRESHOLD_SPREAD));
-  const chanceOn = (n: number, threshold: number, limit: Float64Array) => {
-    if (threshold > certain) return 1;
-    if (threshold < 1 / certain) return 0;
-    const tempC = depletion.decidingC[n]!;
-    const sigmaC = schedule.nightSigmaC[start + n]!;
-    const colder = limitAt(limit, tempC - sigmaC);
-    const milder = limitAt(limit, tempC + sigmaC);
-    const byWeather = milder > 0 ? (milder - colder) / (milder + colder) : 0;
-    const spread = Math.min(WIDEST_THRESHOLD_SPREAD, Math.hypot(byWeather, coldSpread(cellSet, tempC)));
-    return chanceBelow(belief, threshold, spread);
-  };
+  const { depletion, schedule, start, belief } = of;
+  const chanceBright: number[] = [];
+  const chanceLit: number[] = [];
+  const certain = Math.exp(CERTAIN_SPREADS * (belief.spread + WIDEST_THRESHOLD_SPREAD));
   let sofar = 1;
   for (let n = 0; n < depletion.count; n += 1) {
-    if (sofar > 0) sofar = Math.min(sofar, chanceOn(n, depletion.brightBelow[n]!, depletion.limits.dim));
-    chanceBright[n] = sofar;
-    chanceLit[n] = Math.max(sofar, chanceOn(n, depletion.litBelow[n]!, depletion.limits.dark));
+    const brightBelow = depletion.brightBelow[n]!;
+    if (brightBelow > certain) {
+      chanceBright.push(sofar);
+      chanceLit.push(1);
+      continue;
+    }
+    const spread = nightSpread(of, depletion.decidingC[n]!, schedule.nightSigmaC[start + n]!);
+    sofar = Math.min(sofar, chanceBelow(belief, brightBelow, spread));
+    chanceBright.push(sofar);
+    chanceLit.push(Math.max(sofar, chanceBelow(belief, depletion.litBelow[n]!, spread)));
   }
   return { chanceBright, chanceLit };
+}
+
+/** Spread of the logarithm of a threshold on a night of this temperature and uncertainty. */
+function nightSpread(
+  { cellSet, depletion }: Pick<PropProjection, 'cellSet' | 'depletion'>,
+  tempC: number,
+  sigmaC: number,
+): number {
+  const colder = limitAt(depletion.limits.dim, tempC - sigmaC);
+  const milder = limitAt(depletion.limits.dim, tempC + sigmaC);
+  const byWeather = milder > 0 ? (milder - colder) / (milder + colder) : 0;
+  const byTable = coldSpread(cellSet, tempC);
+  return Math.min(WIDEST_THRESHOLD_SPREAD, Math.sqrt(byWeather ** 2 + byTable ** 2));
 }
 
 /**
  * The 80 % range of the first evening on which a falling chance has gone: early when one in ten is, likely when
  * half are, late when nine in ten are. null = not within the evenings looked at.
  */
-export function rangeOf(from: Evening, chance: Float64Array): EveningRange {
+export function rangeOf(from: Evening, chance: ArrayLike<number>): EveningRange {
   let sofar = 1;
   let n = 0;
   const firstBelow = (level: number): Evening | null => {

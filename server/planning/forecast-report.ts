@@ -80,7 +80,7 @@ export function leftShareAt(projection: PropProjection, asked: Asked): number {
 export function causeOf(projection: PropProjection, dim: EveningRange): 'used-up' | 'cold' | null {
   if (dim.likely === null) return null;
   const n = eveningsBetween(projection.from, dim.likely);
-  return projection.depletion.dimByCold[n] === 1 ? 'cold' : 'used-up';
+  return projection.depletion.dimByCold[n] ? 'cold' : 'used-up';
 }
 
 /** Swap at once when somebody has seen this set dim or dark; else as the chances say. */

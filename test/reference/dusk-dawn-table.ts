@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
+import { packageRoot } from '../../server/config.ts';
 import type { Evening, Instant } from '../../server/model/evening.ts';
 import type { Place } from '../../server/model/sun.ts';
 
@@ -25,7 +26,7 @@ export type GrazingNight = {
 
 /** Rows of a comma-separated table in test/reference/data without quotes, as records by column name. */
 export function rowsOf(file: string): Record<string, string>[] {
-  const text = readFileSync(join(import.meta.dirname, 'data', file), 'utf8');
+  const text = readFileSync(join(packageRoot(), 'test', 'reference', 'data', file), 'utf8');
   const [head, ...lines] = text.trim().split(/\r?\n/);
   const names = head!.split(',');
   return lines.map((line) => {
