@@ -36,6 +36,7 @@ export function forecastProp(
     season,
     asOf,
     shelf: new Map(),
+    wholeSeason: true,
   });
   return propForecast({ prop, asOf, season, wanted }, outcome);
 }

@@ -47,6 +47,7 @@ export function forecastSite(deps: Deps, input: { siteId: string; asOf?: Instant
         season,
         asOf,
         shelf,
+        wholeSeason: false,
       });
       return siteForecastProp({ prop, asOf, season, wanted }, outcome, reach);
     }),

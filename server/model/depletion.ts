@@ -23,6 +23,8 @@ export type SetCourse = {
   selfDischargeMah(evening: number, tempC: number): number;
   /** Standard deviation of the logarithm of the drain factor: how far apart factors are followed. */
   spread: number;
+  /** Stop once even the least thirsty factor has gone dark: what comes after decides nothing but how it recovers. */
+  untilSpent: boolean;
 };
 
 /** What happens on each evening since the set went in, by the likely course and by drain factor. */
@@ -77,10 +79,10 @@ const LIKELY = 4;
  * at are those of the schedule, at most four hours apart.
  */
 export function deplete(set: SetCourse): Depletion {
-  const count = set.schedule.count - set.start;
-  check(count > 0, 'the set goes in after the season');
+  const evenings = set.schedule.count - set.start;
+  check(evenings > 0, 'the set goes in after the season');
   const out: Depletion = {
-    count,
+    count: 0,
     limits: limitTables(set),
     litHours: [],
     usedMah: [],
@@ -105,7 +107,7 @@ export function deplete(set: SetCourse): Depletion {
     decidingC: 0,
   };
   const { x } = evening.followed;
-  for (let n = 0; n < count; n += 1) {
+  for (let n = 0; n < evenings; n += 1) {
     if (n > 0) evening.schedule = set.schedule;
     evening.i = n === 0 ? 0 : set.start + n;
     const { schedule, i } = evening;
@@ -120,6 +122,8 @@ export function deplete(set: SetCourse): Depletion {
     out.litHours.push(schedule.litHours[i]!);
     out.eveningMah.push(evening.litMah * drawShare + otherMah);
     out.usedMah.push(set.drawDown.usedOf(x[LIKELY]!));
+    out.count += 1;
+    if (set.untilSpent && evening.followed.darkMargin[0]! < 0) break;
   }
   return out;
 }

@@ -52,6 +52,8 @@ export type PropQuestion = {
   season: Season;
   asOf: Instant;
   shelf: ScheduleShelf;
+  /** Follow it to the end of the season, or only until it is surely spent (enough for its line in a list). */
+  wholeSeason: boolean;
 };
 
 /**
@@ -110,6 +112,7 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
     usedAtStartMah: (1 - leftAtStartShare) * labelMah(cellSet) * set.healthShare,
     selfDischargeMah: dailyLossOf(cellSet),
     spread: belief.spread,
+    untilSpent: !question.wholeSeason,
   });
   const defaults = [
     ...load.defaults,
@@ -117,7 +120,7 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
     ...(set.leftShare === null ? ['leftShare'] : []),
     ...switchingDefaults(prop),
   ];
-  const base = {
+  return {
     set,
     cellSet,
     load,
@@ -127,11 +130,15 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
     depletion,
     dimShares,
     darkShares,
+    rateMa: demand.rateMa,
     belief,
     leftAtStartShare,
+    schedule,
+    start,
+    firstEvening,
+    defaults,
+    ...chancesOf({ depletion, schedule, start, cellSet, belief }),
   };
-  const rest = { rateMa: demand.rateMa, schedule, start, firstEvening, defaults };
-  return { ...base, ...rest, ...chancesOf({ ...base, ...rest }) };
 }
 
 function waitsForSomething(prop: Prop): boolean {
@@ -204,7 +211,9 @@ const WIDEST_THRESHOLD_SPREAD = 0.5;
  * Chances from thresholds: the drain factor's belief, widened on each evening by what the night's own temperature
  * may turn out to be and by how well the cold table is known there.
  */
-function chancesOf(of: Omit<PropProjection, 'chanceBright' | 'chanceLit'>) {
+function chancesOf(
+  of: Pick<PropProjection, 'depletion' | 'schedule' | 'start' | 'cellSet' | 'belief'>,
+): Pick<PropProjection, 'chanceBright' | 'chanceLit'> {
   const { depletion, schedule, start, belief } = of;
   const chanceBright: number[] = [];
   const chanceLit: number[] = [];

@@ -92,7 +92,12 @@ export function swapByFor(projection: PropProjection, wanted: Wanted): Evening |
 
 /** The part of a projection that decides what is needed. */
 export function courseOf({ from, chanceBright, schedule, start }: PropProjection): ChanceCourse {
-  return { from, chanceBright, showNight: (n) => schedule.showNight[start + n]! };
+  return {
+    from,
+    evenings: schedule.count - start,
+    chanceBright,
+    showNight: (n) => schedule.showNight[start + n]!,
+  };
 }
 
 /** Everything about one prop: ranges, chances by night, and the sum behind them. */

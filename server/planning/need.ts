@@ -4,6 +4,9 @@ import type { Seen } from '../model/log-entry.ts';
 /** A prop's chances, and which evenings are show nights that are on, by evening from `from` on. */
 export type ChanceCourse = {
   from: Evening;
+  /** How many evenings the season has from there on. */
+  evenings: number;
+  /** Falling; may end before the season does, and then the last one goes on. */
   chanceBright: ArrayLike<number>;
   showNight(n: number): boolean;
 };
@@ -18,7 +21,10 @@ export type Wanted = {
   today: Evening;
 };
 
-/** Places of the evenings that count, from today on. */
+function chanceOn({ chanceBright }: ChanceCourse, n: number): number {
+  return chanceBright[Math.min(n, chanceBright.length - 1)]!;
+}
+
 function todayPlace(course: ChanceCourse, wanted: Wanted): number {
   return Math.max(0, eveningsBetween(course.from, wanted.today));
 }
@@ -30,8 +36,8 @@ function todayPlace(course: ChanceCourse, wanted: Wanted): number {
  */
 export function swapByOf(course: ChanceCourse, wanted: Wanted): Evening | null {
   const today = todayPlace(course, wanted);
-  for (let n = today; n < course.chanceBright.length; n += 1) {
-    if (course.chanceBright[n]! >= wanted.confidence) continue;
+  for (let n = today; n < course.evenings; n += 1) {
+    if (chanceOn(course, n) >= wanted.confidence) continue;
     if (wanted.everyEvening || course.showNight(n)) return addEvenings(course.from, Math.max(today, n - 1));
   }
   return null;
@@ -39,10 +45,10 @@ export function swapByOf(course: ChanceCourse, wanted: Wanted): Evening | null {
 
 /** Chance of being bright on every evening that counts from today through an evening; 1 when none does. */
 export function chanceThrough(course: ChanceCourse, wanted: Wanted, through: Evening): number {
-  const end = Math.min(eveningsBetween(course.from, through), course.chanceBright.length - 1);
+  const end = Math.min(eveningsBetween(course.from, through), course.evenings - 1);
   for (let n = end; n >= todayPlace(course, wanted); n -= 1) {
     // The course never rises, so the last evening that counts decides.
-    if (wanted.everyEvening || course.showNight(n)) return course.chanceBright[n]!;
+    if (wanted.everyEvening || course.showNight(n)) return chanceOn(course, n);
   }
   return 1;
 }

@@ -84,6 +84,7 @@ function project(props: readonly Prop[], season: ReturnType<typeof aSeason>): Pr
       season,
       asOf: fittedAt,
       shelf,
+      wholeSeason: true,
     }) as PropProjection;
   });
 }

@@ -53,6 +53,7 @@ function follow(nightsC: number[]) {
     usedAtStartMah: 0,
     selfDischargeMah: () => 0,
     spread: 0.2,
+    untilSpent: false,
   });
 }
 
@@ -120,6 +121,7 @@ describe('against the plain hour-by-hour sum', () => {
       season,
       asOf: fittedAt,
       shelf,
+      wholeSeason: true,
     };
     return { prop, projection: projectProp(question) as PropProjection };
   });

@@ -11,6 +11,7 @@ import {
 // Thursday 22 October 2026 and the evenings after it.
 const course = (chanceBright: number[], shows: number[]): ChanceCourse => ({
   from: '2026-10-22',
+  evenings: chanceBright.length,
   chanceBright,
   showNight: (n) => shows.includes(n),
 });
@@ -31,6 +32,12 @@ describe('swap by', () => {
   });
   it('counts every evening where the site has no show nights', () => {
     expect(swapByOf(course([1, 1, 0.89], []), { ...wanted, everyEvening: true })).toBe('2026-10-23');
+  });
+  it('goes on with the last chance where the course ends before the season', () => {
+    const spent = { ...course([1, 0.3], [0, 1, 5]), evenings: 8 };
+    expect(swapByOf(spent, { ...wanted, today: '2026-10-25' })).toBe('2026-10-26');
+    expect(chanceThrough(spent, { ...wanted, today: '2026-10-25' }, '2026-10-27')).toBe(0.3);
+    expect(swapByOf(spent, { ...wanted, today: '2026-10-28' })).toBeNull();
   });
   it('looks no further back than today', () => {
     const late = { ...wanted, today: '2026-10-24' };

@@ -23,6 +23,7 @@ function project(prop: Prop, of: { zoneOffsetC?: number; leftShare?: number } = 
     season,
     asOf: fittedAt,
     shelf: new Map(),
+    wholeSeason: true,
   }) as PropProjection;
 }
 

@@ -106,6 +106,21 @@ describe('the demo', () => {
     expect(c03.fittedAt).toBeLessThan(parseInstant('2026-10-11T00:00:00Z')!);
   });
 
+  it('says of each prop in the list what its own page says, on any day', () => {
+    for (const moment of ['2026-10-15T20:00:00Z', DEMO_AS_OF, '2026-10-30T09:00:00Z']) {
+      for (const line of at(moment).props) {
+        const { dim, dark, swapBy, cause } = forecastProp(demo.deps, {
+          propId: line.propId,
+          asOf: parseInstant(moment)!,
+        });
+        expect(
+          { dim: line.dim, dark: line.dark, swapBy: line.swapBy, cause: line.cause },
+          `${line.tag} ${moment}`,
+        ).toEqual({ dim, dark, swapBy, cause });
+      }
+    }
+  });
+
   it('fits every swap a prop can take', () => {
     expect([...siteLog(demo.store.db, demo.siteId).values()].flat().length).toBeGreaterThan(100);
   });
