@@ -2,6 +2,7 @@ import { type Evening, eveningOf } from '../model/evening.ts';
 import type { SiteForecastProp } from '../model/forecast.ts';
 import { type NotProjected, type PropProjection, rangeOf } from '../model/prop-forecast.ts';
 import { notProjectedWarning } from '../model/warnings.ts';
+import { eveningWeather } from '../model/weather.ts';
 import { eveningWords } from './evening-words.ts';
 import { type Asked, causeOf, courseOf, isProjected, leftShareAt, swapByFor } from './forecast-report.ts';
 import { type Group, groupOf } from './need.ts';
@@ -45,21 +46,23 @@ export function siteForecastProp(
     chanceBrightToNextRound,
     leftShare: leftShareAt(outcome, asked),
     lastSeen: lastSeen?.seen ?? null,
-    note: noteOf({ group, chance: chanceBrightToNextRound, asked, reach, lastSeen }),
+    note: noteOf({ group, chance: chanceBrightToNextRound, asked, reach, projection: outcome }),
   };
 }
+
+/** Cells that fail below this are as likely cold as flat. Common practice, no source. */
+const MAYBE_COLD_C = 2;
 
 function noteOf(of: {
   group: Group;
   chance: number;
   asked: Asked;
   reach: { rounds: readonly Evening[] };
-  lastSeen: { seen: string; at: number } | null;
+  projection: PropProjection;
 }): string | null {
-  const { lastSeen, asked } = of;
-  if (lastSeen?.seen === 'dim' || lastSeen?.seen === 'dark') {
-    return `Seen ${lastSeen.seen} on ${eveningWords(eveningOf(lastSeen.at, asked.season.place.timeZone))}: it wants a swap now.`;
-  }
+  const { asked, projection } = of;
+  const { lastSeen } = projection.set;
+  if (lastSeen?.seen === 'dim' || lastSeen?.seen === 'dark') return seenNote(asked, projection, lastSeen);
   const next = of.reach.rounds[0];
   const until = next ? `the round on ${eveningWords(next)}` : 'a week from now';
   if (of.group === 'at-risk') {
@@ -67,4 +70,17 @@ function noteOf(of: {
   }
   if (of.group === 'next-round') return `Lasts past ${until}, not to the round after it.`;
   return null;
+}
+
+function seenNote(
+  asked: Asked,
+  projection: PropProjection,
+  { seen, at }: { seen: string; at: number },
+): string {
+  const { place, weather } = asked.season;
+  const evening = eveningOf(at, place.timeZone);
+  const airC = eveningWeather(weather, evening).minC + projection.offsetC;
+  const when = `Seen ${seen} on ${eveningWords(evening)}`;
+  if (airC > MAYBE_COLD_C || leftShareAt(projection, asked) < 0.2) return `${when}: it wants a swap now.`;
+  return `${when}, a night down to ${Math.round(airC)} °C: maybe cold, not flat. Swap it, and warm and test the old set before binning it.`;
 }

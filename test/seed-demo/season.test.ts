@@ -68,6 +68,9 @@ describe('the demo', () => {
     // A wet joint, dried: bright again is bright again.
     expect(propAt('D-05', '2026-10-18T18:55:00Z').group).toBe('at-risk');
     expect(prop('D-05').group).toBe('fine');
+    // Dark in the frost with two thirds left: maybe cold, not flat.
+    expect(propAt('A-02', '2026-10-29T19:30:00Z').note).toMatch(/maybe cold, not flat/);
+    expect(prop('F-03').note).toMatch(/wants a swap now/);
     // Moved to the graveyard, with its cells.
     expect(prop('B-06').zone).toBe('Graveyard');
     // The mill race is 3 °C colder: the lower wisp is dim before its twin would be.
