@@ -38,5 +38,6 @@ export function forecastProp(
     shelf: new Map(),
     wholeSeason: true,
   });
-  return propForecast({ prop, asOf, season, wanted }, outcome);
+  const nights = input.through === undefined ? {} : { through: input.through };
+  return propForecast({ prop, asOf, season, wanted, ...nights }, outcome);
 }

@@ -23,7 +23,7 @@ export type SetCourse = {
   selfDischargeMah(evening: number, tempC: number): number;
   /** Standard deviation of the logarithm of the drain factor: how far apart factors are followed. */
   spread: number;
-  /** Stop once even the least thirsty factor has gone dark: what comes after decides nothing but how it recovers. */
+  /** Stop once even the least thirsty factor is dark and no evening to come is mild enough to light it again. */
   untilSpent: boolean;
 };
 
@@ -34,8 +34,11 @@ export type Depletion = {
   litHours: number[];
   /** Used at the end of the evening if the sum is right, mAh; it stands still while the prop is dark. */
   usedMah: number[];
-  /** Charge this evening takes by the likely course if the set lasts it out, mAh. */
+  /** Charge this evening takes by the likely course if the set lasts it out, and what of it trips take, mAh. */
   eveningMah: number[];
+  tripMah: number[];
+  /** Current of the likely course tonight ÷ mean current: below 1 for a light that has begun to fade. */
+  drawShare: number[];
   /** Air at the moment of the evening that decides (where least is left to the dim limit), offset included, °C. */
   decidingC: number[];
   /** Drain factor below which it is bright, and lit, through the whole evening; Infinity where it is not lit at all. */
@@ -87,6 +90,8 @@ export function deplete(set: SetCourse): Depletion {
     litHours: [],
     usedMah: [],
     eveningMah: [],
+    tripMah: [],
+    drawShare: [],
     decidingC: [],
     brightBelow: [],
     litBelow: [],
@@ -112,20 +117,29 @@ export function deplete(set: SetCourse): Depletion {
     evening.i = n === 0 ? 0 : set.start + n;
     const { schedule, i } = evening;
     const drawShare = set.drawDown.drawShareAt(x[LIKELY]!);
+    const tripMah = set.mahPerTrip * schedule.trips[i]!;
     const otherMah =
       set.standbyMa * (schedule.poweredHours[i]! - schedule.litHours[i]!) +
-      set.mahPerTrip * schedule.trips[i]! +
+      tripMah +
       set.selfDischargeMah(n, schedule.nightC[i]! + set.offsetC);
     evening.litMah = set.meanMa * schedule.litHours[i]!;
     evening.otherMah = otherMah / drawShare;
     followEvening(evening);
     out.litHours.push(schedule.litHours[i]!);
     out.eveningMah.push(evening.litMah * drawShare + otherMah);
+    out.tripMah.push(tripMah);
+    out.drawShare.push(drawShare);
     out.usedMah.push(set.drawDown.usedOf(x[LIKELY]!));
     out.count += 1;
-    if (set.untilSpent && evening.followed.darkMargin[0]! < 0) break;
+    if (set.untilSpent && isSpent(evening, schedule.warmestFromC[i + 1]!)) break;
   }
   return out;
+}
+
+function isSpent({ set, out, followed, schedule }: EveningSheet, warmestToComeC: number): boolean {
+  if (followed.darkMargin[0]! >= 0 || schedule === set.firstEvening) return false;
+  if (warmestToComeC === Number.NEGATIVE_INFINITY) return true;
+  return followed.x[0]! >= limitAt(out.limits.dark, warmestToComeC + set.offsetC);
 }
 
 /** By drain factor: reckoned charge and how fast it rises with the factor; and of one evening the tightest margins. */

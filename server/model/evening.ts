@@ -234,6 +234,11 @@ export function eveningOf(at: Instant, timeZone: string): Evening {
 
 // ---- Wall times ----
 
+/** The last of some evenings. */
+export function latestOf(...evenings: [Evening, ...Evening[]]): Evening {
+  return [...evenings].sort().at(-1)!;
+}
+
 /** From this hour on a morning belongs, in people's minds, to the evening to come. Common practice, no source. */
 const MORNING_HOUR_MS = 6 * HOUR_MS;
 

@@ -11,7 +11,7 @@ export type ForecastNight = {
   usedMah: number;
   /** Charge the set gives down to dimVolts in this evening's cold, mAh per set. */
   usableMah: number;
-  /** Chance that it has been bright on this and every earlier evening since the set went in. */
+  /** Chance of being bright on this evening and every one from tonight up to it (from the swap, for evenings gone by). */
   chanceBright: number;
   /** Chance that it is lit all through this evening's lit hours; comes back after a cold blackout. */
   chanceLit: number;
@@ -30,7 +30,11 @@ export type Why = {
   meanMa: number | null;
   standbyMa: number;
   litHoursTonight: number;
+  /** What trips take of tonight's charge. */
+  tripMahTonight: number;
   mahTonight: number;
+  /** Current for which `rateShare` was looked up, mA. */
+  rateMa: number;
   capacityMah: number;
   coldShare: number;
   rateShare: number;

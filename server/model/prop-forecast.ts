@@ -27,15 +27,17 @@ export type PropProjection = {
   depletion: Depletion;
   dimShares: UsableShares;
   darkShares: UsableShares;
+  /** Current for which the rate share was looked up, mA. */
   rateMa: number;
   belief: Belief;
   leftAtStartShare: number;
-  /** Chance bright on this and every earlier evening; chance lit on this evening. By evenings since `from`. */
-  chanceBright: number[];
-  chanceLit: number[];
+  /** Chance of being bright, and lit, on each evening taken by itself; by evenings since `from`. */
+  brightOn: number[];
+  litOn: number[];
   schedule: Schedule;
   start: number;
-  firstEvening: Schedule;
+  /** What lights it and since when, as its schedule has it. */
+  lighting: { switching: Switching; since: Instant };
   defaults: string[];
 };
 
@@ -77,15 +79,15 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
     dimVolts: prop.dimVolts,
     waits: waitsForSomething(prop),
   });
-  if (load.meanMa === null && !prop.trips && load.standbyMa === 0) return { reason: 'no-draw', set };
+  if (!load.meanMa && !prop.trips) return { reason: 'no-draw', set };
   const from = eveningOf(set.fittedAt, season.place.timeZone);
   if (eveningsBetween(season.from, from) < 0) return { reason: 'set-too-old', set };
-  const { schedule, start, firstEvening } = scheduleFor(question, set, from);
+  const { schedule, start, firstEvening, lighting } = scheduleFor(question, set, from);
   const leftAtStartShare = set.leftShare ?? 0.5;
   const meanMa = load.meanMa ?? 0;
   const mahPerTrip = prop.trips ? (prop.trips.runMa * prop.trips.seconds) / 3600 : 0;
   const demand = {
-    rateMa: typicalCurrentMa(prop, load, schedule),
+    rateMa: typicalCurrentMa(prop, load, { schedule, start, closes: season.closes }),
     peakMa: Math.max(load.peakMa, prop.trips?.runMa ?? 0),
   };
   const stopVolts = prop.stopVolts ?? defaultStopVolts(prop, type);
@@ -135,9 +137,9 @@ export function projectProp(question: PropQuestion): PropProjection | NotProject
     leftAtStartShare,
     schedule,
     start,
-    firstEvening,
+    lighting,
     defaults,
-    ...chancesOf({ depletion, schedule, start, cellSet, belief }),
+    ...chancesOf({ depletion, schedule, start, cellSet, belief, set, from }, season.place.timeZone),
   };
 }
 
@@ -167,7 +169,8 @@ function defaultStopVolts(prop: Prop, type: CellType): number {
 function scheduleFor(question: PropQuestion, set: SetInUse, from: Evening) {
   const { prop, season, shelf } = question;
   const { trips } = prop;
-  const { switching, since } = startedBy(prop, set);
+  const lighting = startedBy(prop, set);
+  const { switching, since } = lighting;
   const key = JSON.stringify([switching, trips ?? null, since]);
   let schedule = shelf.get(key);
   if (!schedule) {
@@ -176,7 +179,7 @@ function scheduleFor(question: PropQuestion, set: SetInUse, from: Evening) {
     shelf.set(key, schedule);
   }
   const firstEvening = scheduleOf(season, { switching, trips, from, through: from, since: set.fittedAt });
-  return { schedule, start: eveningsBetween(schedule.from, from), firstEvening };
+  return { schedule, start: eveningsBetween(schedule.from, from), firstEvening, lighting };
 }
 
 /** An interval timer starts again whenever its cells are out; the others do not care, so props lit alike share. */
@@ -187,19 +190,31 @@ function startedBy({ switching }: Prop, set: SetInUse): { switching: Switching; 
 }
 
 /**
- * The current at which a set's charge is mostly taken, mA: each part of a season's draw weighted by its charge.
- * Ours: a trip prop's rate is that of its runs, not of the hours it waits.
+ * The current at which a set's charge is mostly taken, mA: each part of its draw, from the evening it went in to the
+ * site's last, weighted by its charge. Ours: a trip prop's rate is that of its runs, not of the hours it waits.
  */
-function typicalCurrentMa(prop: Prop, load: ReckonedLoad, { total }: Schedule): number {
+function typicalCurrentMa(
+  prop: Prop,
+  load: ReckonedLoad,
+  of: { schedule: Schedule; start: number; closes: Evening },
+): number {
+  const { schedule, start } = of;
+  const closesAt = eveningsBetween(schedule.from, of.closes) + 1;
+  const end = closesAt > start ? Math.min(closesAt, schedule.count) : schedule.count;
+  let [litHours, poweredHours, trips] = [0, 0, 0];
+  for (let i = start; i < end; i += 1) {
+    litHours += schedule.litHours[i]!;
+    poweredHours += schedule.poweredHours[i]!;
+    trips += schedule.trips[i]!;
+  }
   const meanMa = load.meanMa ?? 0;
   const { runMa = 0, seconds = 0 } = prop.trips ?? {};
-  const parts = [
-    { ma: meanMa, mah: meanMa * total.litHours },
-    { ma: load.standbyMa, mah: load.standbyMa * (total.poweredHours - total.litHours) },
-    { ma: runMa, mah: (total.trips * runMa * seconds) / 3600 },
-  ];
-  const totalMah = parts.reduce((sum, { mah }) => sum + mah, 0);
-  return totalMah > 0 ? parts.reduce((sum, { ma, mah }) => sum + ma * mah, 0) / totalMah : meanMa;
+  const litMah = meanMa * litHours;
+  const waitMah = load.standbyMa * (poweredHours - litHours);
+  const tripMah = (trips * runMa * seconds) / 3600;
+  const totalMah = litMah + waitMah + tripMah;
+  if (totalMah === 0) return Math.max(meanMa, runMa);
+  return (meanMa * litMah + load.standbyMa * waitMah + runMa * tripMah) / totalMah;
 }
 
 /** A threshold this many spreads from the likely draw is certain. */
@@ -208,30 +223,31 @@ const CERTAIN_SPREADS = 6;
 const WIDEST_THRESHOLD_SPREAD = 0.5;
 
 /**
- * Chances from thresholds: the drain factor's belief, widened on each evening by what the night's own temperature
- * may turn out to be and by how well the cold table is known there.
+ * Chances from thresholds, each evening by itself: the drain factor's belief, widened by what the night's own
+ * temperature may turn out to be and by how well the cold table is known there. From the evening somebody saw it dim
+ * on (dark on) it is not bright (lit).
  */
 function chancesOf(
-  of: Pick<PropProjection, 'depletion' | 'schedule' | 'start' | 'cellSet' | 'belief'>,
-): Pick<PropProjection, 'chanceBright' | 'chanceLit'> {
-  const { depletion, schedule, start, belief } = of;
-  const chanceBright: number[] = [];
-  const chanceLit: number[] = [];
+  of: Pick<PropProjection, 'depletion' | 'schedule' | 'start' | 'cellSet' | 'belief' | 'set' | 'from'>,
+  timeZone: string,
+): Pick<PropProjection, 'brightOn' | 'litOn'> {
+  const { depletion, schedule, start, belief, set } = of;
+  const brightOn: number[] = [];
+  const litOn: number[] = [];
+  const failedFrom = set.failing ? eveningsBetween(of.from, eveningOf(set.failing.at, timeZone)) : Infinity;
   const certain = Math.exp(CERTAIN_SPREADS * (belief.spread + WIDEST_THRESHOLD_SPREAD));
-  let sofar = 1;
   for (let n = 0; n < depletion.count; n += 1) {
     const brightBelow = depletion.brightBelow[n]!;
-    if (brightBelow > certain) {
-      chanceBright.push(sofar);
-      chanceLit.push(1);
-      continue;
+    let [bright, lit] = [1, 1];
+    if (brightBelow <= certain) {
+      const spread = nightSpread(of, depletion.decidingC[n]!, schedule.nightSigmaC[start + n]!);
+      bright = chanceBelow(belief, brightBelow, spread);
+      lit = Math.max(bright, chanceBelow(belief, depletion.litBelow[n]!, spread));
     }
-    const spread = nightSpread(of, depletion.decidingC[n]!, schedule.nightSigmaC[start + n]!);
-    sofar = Math.min(sofar, chanceBelow(belief, brightBelow, spread));
-    chanceBright.push(sofar);
-    chanceLit.push(Math.max(sofar, chanceBelow(belief, depletion.litBelow[n]!, spread)));
+    brightOn.push(n < failedFrom ? bright : 0);
+    litOn.push(n < failedFrom || set.failing?.seen === 'dim' ? lit : 0);
   }
-  return { chanceBright, chanceLit };
+  return { brightOn, litOn };
 }
 
 /** Spread of the logarithm of a threshold on a night of this temperature and uncertainty. */
@@ -248,17 +264,22 @@ function nightSpread(
 }
 
 /**
- * The 80 % range of the first evening on which a falling chance has gone: early when one in ten is, likely when
- * half are, late when nine in ten are. null = not within the evenings looked at.
+ * The 80 % range of the first evening, from `first` on, on which a chance has been lost: early when one in ten is,
+ * likely when half are, late when nine in ten are. null = not within the evenings looked at.
+ * @param of.chanceOn chance on evening n by itself
  */
-export function rangeOf(from: Evening, chance: ArrayLike<number>): EveningRange {
+export function rangeOf(of: {
+  from: Evening;
+  first: number;
+  evenings: number;
+  chanceOn(n: number): number;
+}): EveningRange {
   let sofar = 1;
-  let n = 0;
+  let n = of.first;
   const firstBelow = (level: number): Evening | null => {
-    while (n < chance.length) {
-      sofar = Math.min(sofar, chance[n]!);
-      if (sofar < level) return addEvenings(from, n);
-      n += 1;
+    for (; n < of.evenings; n += 1) {
+      sofar = Math.min(sofar, of.chanceOn(n));
+      if (sofar < level) return addEvenings(of.from, n);
     }
     return null;
   };

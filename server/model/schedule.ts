@@ -9,6 +9,8 @@ export type Season = {
   place: Place;
   from: Evening;
   through: Evening;
+  /** The site's own last evening, whatever run of evenings was prepared. */
+  closes: Evening;
   weather: SeasonWeather;
   showNights: ReadonlyMap<Evening, ShowNight>;
 };
@@ -22,8 +24,6 @@ export type Schedule = {
   poweredHours: number[];
   trips: number[];
   showNight: boolean[];
-  /** Of all its evenings together. */
-  total: { litHours: number; poweredHours: number; trips: number };
   /**
    * Moments at which the set must still hold: `checkFrom[n]` up to `checkFrom[n + 1]` belong to evening n.
    * With each the lit hours so far, the share of the evening gone and the air, °C.
@@ -35,6 +35,8 @@ export type Schedule = {
   /** Mean air from sunset to sunrise, and its spread. */
   nightC: number[];
   nightSigmaC: number[];
+  /** Warmest air at any look from evening n on, °C; -Infinity where nothing is lit any more. */
+  warmestFromC: number[];
 };
 
 /** A lit spell is looked at this often at least: air changes little within it, and the coldest hour is not missed. */
@@ -43,7 +45,7 @@ const CHECK_EVERY_HOURS = 4;
 /**
  * The schedule of one prop from the evening its set went in.
  * @param of.since when the set went in, or -Infinity for a schedule to share (not with an interval timer: it counts from then); @param of.through last evening wanted, inside the season
- * A trip prop that is not lit otherwise is looked at while the gate is open.
+ * A trip prop that is not lit otherwise is looked at while visitors set it off.
  */
 export function scheduleOf(
   season: Season,
@@ -56,15 +58,16 @@ export function scheduleOf(
     poweredHours: [],
     trips: [],
     showNight: [],
-    total: { litHours: 0, poweredHours: 0, trips: 0 },
     checkFrom: [0],
     checkLitHours: [],
     checkGoneShare: [],
     checkAirC: [],
     nightC: [],
     nightSigmaC: [],
+    warmestFromC: [],
   };
   for (const evening of eveningsFrom(of.from, of.through)) addEvening(schedule, season, of, evening);
+  schedule.warmestFromC = warmestFrom(schedule);
   return schedule;
 }
 
@@ -82,9 +85,9 @@ function addEvening(
   const poweredFrom = Math.max(startAt, of.since);
   const poweredMs = Math.max(0, endAt - poweredFrom);
   const weather = eveningWeather(season.weather, evening);
-  const trips = of.trips ? (on ? of.trips.perShowNight : of.trips.perNightOff) : 0;
+  const trips = of.trips ? tripsOf(of.trips, about) : { count: 0, spells: [] };
   const unlit = lit.spells.length === 0;
-  const spells = unlit && of.trips ? litEvening({ kind: 'by-hand' }, about).spells : lit.spells;
+  const spells = unlit ? trips.spells : lit.spells;
   let litBefore = 0;
   for (const spell of spells) {
     for (const at of checkMoments(spell)) {
@@ -98,13 +101,35 @@ function addEvening(
   schedule.checkFrom.push(schedule.checkAirC.length);
   schedule.litHours.push(lit.litHours);
   schedule.poweredHours.push(poweredMs / HOUR_MS);
-  schedule.trips.push(trips);
+  schedule.trips.push(trips.count);
   schedule.showNight.push(on);
   schedule.nightC.push(weather.meanC);
   schedule.nightSigmaC.push(weather.sigmaC);
-  schedule.total.litHours += lit.litHours;
-  schedule.total.poweredHours += poweredMs / HOUR_MS;
-  schedule.total.trips += trips;
+}
+
+type About = { evening: Evening; place: Place; showNight: ShowNight | null; poweredSinceAt: Instant };
+
+/**
+ * Trips of an evening and when they happen: at a show while the gate is open, else through the dark. A set that goes
+ * in half way takes its share of them.
+ */
+function tripsOf(trips: Trips, about: About): { count: number; spells: LitSpell[] } {
+  const on = about.showNight !== null && !about.showNight.calledOff;
+  const wanted: Switching = on ? { kind: 'by-hand' } : { kind: 'light-sensor' };
+  const whole = litEvening(wanted, { ...about, poweredSinceAt: Number.NEGATIVE_INFINITY });
+  const left = litEvening(wanted, about);
+  const share = whole.litHours > 0 ? left.litHours / whole.litHours : 0;
+  const count = (on ? trips.perShowNight : trips.perNightOff) * share;
+  return { count, spells: count > 0 ? left.spells : [] };
+}
+
+function warmestFrom(schedule: Schedule): number[] {
+  const warmest = Array<number>(schedule.count + 1).fill(Number.NEGATIVE_INFINITY);
+  for (let n = schedule.count - 1; n >= 0; n -= 1) {
+    const looks = schedule.checkAirC.slice(schedule.checkFrom[n], schedule.checkFrom[n + 1]);
+    warmest[n] = Math.max(warmest[n + 1]!, ...looks);
+  }
+  return warmest;
 }
 
 function checkMoments(spell: LitSpell): Instant[] {

@@ -1,5 +1,5 @@
 import type { Instant } from './evening.ts';
-import type { LogEntry, Seen, Swap } from './log-entry.ts';
+import type { LogEntry, Seen, Sighting, Swap } from './log-entry.ts';
 import type { Prop } from './prop.ts';
 
 /** The cells now in a prop, as the log tells it. */
@@ -17,6 +17,8 @@ export type SetInUse = {
   mixedKinds: boolean;
   /** The last thing seen of this set. */
   lastSeen: { seen: Seen; at: Instant } | null;
+  /** Seen dim or dark, and not bright since: an odd look takes nothing back. */
+  failing: { seen: 'dim' | 'dark'; at: Instant } | null;
 };
 
 /** How many cells a prop holds, all its units together. */
@@ -33,23 +35,25 @@ export function setInUse(prop: Prop, log: readonly LogEntry[], asOf: Instant): S
   for (const entry of log) {
     if (entry.at > asOf) break;
     if (entry.kind === 'swap') set = afterSwap(prop, set, entry);
-    else if (set) set = { ...set, lastSeen: { seen: entry.seen, at: entry.at } };
+    else if (set) set = afterSighting(set, entry);
   }
   return set;
+}
+
+function afterSighting(set: SetInUse, { seen, at }: Sighting): SetInUse {
+  const lastSeen = { seen, at };
+  if (seen === 'odd') return { ...set, lastSeen };
+  return { ...set, lastSeen, failing: seen === 'bright' ? null : { seen, at } };
 }
 
 function afterSwap(prop: Prop, before: SetInUse | null, swap: Swap): SetInUse {
   const cellTypeId = swap.cellTypeId ?? prop.cellTypeId;
   const ofCells = cellsIn(prop);
   const newCells = swap.cells ?? ofCells;
-  if (before && newCells < ofCells) {
-    return {
-      ...before,
-      poweredAt: swap.at,
-      partBatch: { newCells, ofCells },
-      mixedKinds: before.mixedKinds || cellTypeId !== before.cellTypeId,
-      lastSeen: null,
-    };
+  const partBatch = newCells < ofCells ? { newCells, ofCells } : null;
+  if (before && partBatch) {
+    const mixedKinds = before.mixedKinds || cellTypeId !== before.cellTypeId;
+    return { ...before, poweredAt: swap.at, partBatch, mixedKinds, lastSeen: null, failing: null };
   }
   return {
     fittedAt: swap.at,
@@ -57,8 +61,9 @@ function afterSwap(prop: Prop, before: SetInUse | null, swap: Swap): SetInUse {
     cellTypeId,
     leftShare: swap.state === 'part-used' ? (swap.leftShare ?? null) : 1,
     healthShare: swap.healthShare ?? 1,
-    partBatch: null,
+    partBatch,
     mixedKinds: false,
     lastSeen: null,
+    failing: null,
   };
 }

@@ -8,6 +8,7 @@ import {
   eveningsBetween,
   HOUR_MS,
   type Instant,
+  latestOf,
 } from '../model/evening.ts';
 import type { EveningRange, ForecastNight, PropForecast, Why } from '../model/forecast.ts';
 import type { Prop } from '../model/prop.ts';
@@ -19,7 +20,14 @@ import { eveningWeather } from '../model/weather.ts';
 import { type ChanceCourse, swapByOf, type Wanted } from './need.ts';
 
 /** The question a forecast answers: which prop, as of when, and what matters to its site. */
-export type Asked = { prop: Prop; asOf: Instant; season: Season; wanted: Wanted };
+export type Asked = {
+  prop: Prop;
+  asOf: Instant;
+  season: Season;
+  wanted: Wanted;
+  /** Last evening of the nights wanted; the site's last when absent. */
+  through?: Evening;
+};
 
 const NEVER: EveningRange = { early: null, likely: null, late: null };
 
@@ -45,7 +53,7 @@ export function usedMahAt(projection: PropProjection, asked: Asked): number {
   const evening = addEvenings(projection.from, n);
   const before = n === 0 ? startMah(projection) : depletion.usedMah[n - 1]!;
   const span = eveningSpan(evening, timeZone);
-  const lit = litEvening(asked.prop.switching, {
+  const lit = litEvening(projection.lighting.switching, {
     evening,
     place: asked.season.place,
     showNight: asked.season.showNights.get(evening) ?? null,
@@ -55,7 +63,8 @@ export function usedMahAt(projection: PropProjection, asked: Asked): number {
     (hours, spell) => hours + Math.max(0, Math.min(asked.asOf, spell.untilAt) - spell.fromAt) / HOUR_MS,
     0,
   );
-  const elapsed = (asked.asOf - span.startAt) / (span.endAt - span.startAt);
+  const since = Math.max(span.startAt, projection.set.fittedAt);
+  const elapsed = (asked.asOf - since) / Math.max(1, span.endAt - since);
   const share = lit.litHours > 0 ? goneHours / lit.litHours : elapsed;
   return before + (depletion.usedMah[n]! - before) * Math.min(1, Math.max(0, share));
 }
@@ -83,21 +92,33 @@ export function causeOf(projection: PropProjection, dim: EveningRange): 'used-up
   return projection.depletion.dimByCold[n] ? 'cold' : 'used-up';
 }
 
-/** Swap at once when somebody has seen this set dim or dark; else as the chances say. */
+/** As the chances say, but at once where somebody has seen this set fail and an evening that counts is to come. */
 export function swapByFor(projection: PropProjection, wanted: Wanted): Evening | null {
-  const seen = projection.set.lastSeen?.seen;
-  if (seen === 'dim' || seen === 'dark') return wanted.today;
-  return swapByOf(courseOf(projection), wanted);
+  const swapBy = swapByOf(courseOf(projection), wanted);
+  return swapBy !== null && projection.set.failing ? wanted.today : swapBy;
 }
 
 /** The part of a projection that decides what is needed. */
-export function courseOf({ from, chanceBright, schedule, start }: PropProjection): ChanceCourse {
+export function courseOf({ from, brightOn, schedule, start }: PropProjection): ChanceCourse {
   return {
     from,
     evenings: schedule.count - start,
-    chanceBright,
+    brightOn,
     showNight: (n) => schedule.showNight[start + n]!,
   };
+}
+
+/** The ranges of going dim and dark from tonight on: what was before has been, and a swap mends only what comes. */
+export function rangesOf(
+  projection: PropProjection,
+  { wanted, season }: Asked,
+): { dim: EveningRange; dark: EveningRange } {
+  const { from } = projection;
+  const first = Math.max(0, eveningsBetween(from, wanted.today));
+  const evenings = Math.max(first, eveningsBetween(from, season.closes)) + 1;
+  const range = (chances: number[]) =>
+    rangeOf({ from, first, evenings, chanceOn: (n) => chances[Math.min(n, chances.length - 1)]! });
+  return { dim: range(projection.brightOn), dark: range(projection.litOn) };
 }
 
 /** Everything about one prop: ranges, chances by night, and the sum behind them. */
@@ -108,7 +129,7 @@ export function propForecast(asked: Asked, outcome: PropProjection | NotProjecte
   const today = todayIn(outcome, wanted.today);
   const usedMah = usedMahAt(outcome, asked);
   const tonightMah = usableMahOn(outcome, today);
-  const dim = rangeOf(outcome.from, outcome.chanceBright);
+  const { dim, dark } = rangesOf(outcome, asked);
   return {
     propId: prop.id,
     asOf,
@@ -118,7 +139,7 @@ export function propForecast(asked: Asked, outcome: PropProjection | NotProjecte
     usedShare: dimShares.usableMahAt(20) > 0 ? usedMah / dimShares.usableMahAt(20) : 1,
     usableMah: { at20C: dimShares.usableMahAt(20), tonight: tonightMah },
     dim,
-    dark: rangeOf(outcome.from, outcome.chanceLit),
+    dark,
     swapBy: swapByFor(outcome, wanted),
     cause: causeOf(outcome, dim),
     drainFactor: drainFactorRange(outcome.belief),
@@ -127,18 +148,27 @@ export function propForecast(asked: Asked, outcome: PropProjection | NotProjecte
   };
 }
 
-function nightsOf({ season }: Asked, projection: PropProjection): ForecastNight[] {
+/**
+ * The nights since the set went in. `chanceBright` of an evening to come counts from tonight on, that of one gone by
+ * from the evening the set went in.
+ */
+function nightsOf({ season, wanted, through }: Asked, projection: PropProjection): ForecastNight[] {
   const { depletion, from, schedule, start } = projection;
-  return Array.from({ length: depletion.count }, (_, n) => {
+  const today = eveningsBetween(from, wanted.today);
+  const last = through ?? latestOf(season.closes, wanted.today);
+  const count = Math.min(depletion.count, eveningsBetween(from, last) + 1);
+  let sofar = 1;
+  return Array.from({ length: Math.max(0, count) }, (_, n) => {
     const evening = addEvenings(from, n);
     const weather = eveningWeather(season.weather, evening);
+    sofar = Math.min(n === today ? 1 : sofar, projection.brightOn[n]!);
     return {
       evening,
       litHours: depletion.litHours[n]!,
       usedMah: depletion.usedMah[n]!,
       usableMah: usableMahOn(projection, n),
-      chanceBright: projection.chanceBright[n]!,
-      chanceLit: projection.chanceLit[n]!,
+      chanceBright: sofar,
+      chanceLit: projection.litOn[n]!,
       meanC: weather.meanC + projection.offsetC,
       weather: weather.source,
       showNight: schedule.showNight[start + n]!,
@@ -152,10 +182,12 @@ function whyOf({ prop }: Asked, projection: PropProjection, today: number): Why 
   const tonightC = depletion.decidingC[today]!;
   const litHours = depletion.litHours[today]!;
   return {
-    meanMa: load.meanMa,
+    meanMa: load.meanMa === null ? null : load.meanMa * depletion.drawShare[today]!,
     standbyMa: load.standbyMa,
     litHoursTonight: litHours,
+    tripMahTonight: depletion.tripMah[today]!,
     mahTonight: depletion.eveningMah[today]!,
+    rateMa: projection.rateMa,
     capacityMah: dimShares.capacityMah,
     coldShare: dimShares.coldShareAt(tonightC),
     rateShare: dimShares.rateShare,
@@ -188,7 +220,9 @@ function withoutProjection({ prop, asOf }: Asked, outcome: NotProjected): PropFo
       meanMa: prop.load.meanMa ?? null,
       standbyMa: prop.load.standbyMa,
       litHoursTonight: 0,
+      tripMahTonight: 0,
       mahTonight: 0,
+      rateMa: 0,
       capacityMah: 0,
       coldShare: 1,
       rateShare: 1,

@@ -1,13 +1,12 @@
 import { addEvenings, type Evening, eveningsBetween, weekdayOf } from '../model/evening.ts';
-import type { Seen } from '../model/log-entry.ts';
 
-/** A prop's chances, and which evenings are show nights that are on, by evening from `from` on. */
+/** A prop's chances of being bright, each evening by itself, and which evenings are show nights that are on. */
 export type ChanceCourse = {
   from: Evening;
   /** How many evenings the season has from there on. */
   evenings: number;
-  /** Falling; may end before the season does, and then the last one goes on. */
-  chanceBright: ArrayLike<number>;
+  /** May end before the season does, and then the last one goes on. */
+  brightOn: ArrayLike<number>;
   showNight(n: number): boolean;
 };
 
@@ -19,26 +18,35 @@ export type Wanted = {
   confidence: number;
   /** The evening it is. */
   today: Evening;
+  /** Whether a round that starts at the site's usual hour of an evening is done before that evening's light is wanted. */
+  roundInTime(evening: Evening): boolean;
 };
 
-function chanceOn({ chanceBright }: ChanceCourse, n: number): number {
-  return chanceBright[Math.min(n, chanceBright.length - 1)]!;
+/** Chance of being bright on evening n by itself. */
+export function brightChanceOn({ brightOn }: Pick<ChanceCourse, 'brightOn'>, n: number): number {
+  return brightOn[Math.min(n, brightOn.length - 1)]!;
 }
 
+function counts(course: ChanceCourse, wanted: Wanted, n: number): boolean {
+  return wanted.everyEvening || course.showNight(n);
+}
+
+/** Today's place in a course. */
 function todayPlace(course: ChanceCourse, wanted: Wanted): number {
   return Math.max(0, eveningsBetween(course.from, wanted.today));
 }
 
 /**
- * The last evening by which a swap keeps the chance of being bright on every evening that counts at or above the
- * confidence: the evening before the first one that counts and falls short, so that a round at any hour of it is in
- * time. Not before today. null = the set lasts. Ours.
+ * The last evening by which a swap, made at the site's usual hour, keeps the chance of being bright on every evening
+ * that counts at or above the confidence: the first one that counts and falls short, or the one before where the usual
+ * hour is too late for it. Not before today. null = the set lasts. Ours.
  */
 export function swapByOf(course: ChanceCourse, wanted: Wanted): Evening | null {
   const today = todayPlace(course, wanted);
   for (let n = today; n < course.evenings; n += 1) {
-    if (chanceOn(course, n) >= wanted.confidence) continue;
-    if (wanted.everyEvening || course.showNight(n)) return addEvenings(course.from, Math.max(today, n - 1));
+    if (brightChanceOn(course, n) >= wanted.confidence || !counts(course, wanted, n)) continue;
+    const evening = addEvenings(course.from, n);
+    return n === today || wanted.roundInTime(evening) ? evening : addEvenings(evening, -1);
   }
   return null;
 }
@@ -46,23 +54,26 @@ export function swapByOf(course: ChanceCourse, wanted: Wanted): Evening | null {
 /** Chance of being bright on every evening that counts from today through an evening; 1 when none does. */
 export function chanceThrough(course: ChanceCourse, wanted: Wanted, through: Evening): number {
   const end = Math.min(eveningsBetween(course.from, through), course.evenings - 1);
-  for (let n = end; n >= todayPlace(course, wanted); n -= 1) {
-    // The course never rises, so the last evening that counts decides.
-    if (wanted.everyEvening || course.showNight(n)) return chanceOn(course, n);
+  let chance = 1;
+  for (let n = todayPlace(course, wanted); n <= end; n += 1) {
+    // One drain factor decides all evenings, so the worst of them decides.
+    if (counts(course, wanted, n)) chance = Math.min(chance, brightChanceOn(course, n));
   }
-  return 1;
+  return chance;
 }
 
 /**
- * The first evenings from today on that a round may be made, at most two: the next round and the one after.
+ * The first evenings from today on that a round may be made, at most two: the next round and the one after. None after
+ * the season.
  * @param habits.weekdays ISO, 1..7; @param habits.tooLateToday whether today's usual starting time has passed
  */
 export function nextRounds(
   today: Evening,
-  habits: { weekdays: readonly number[]; tooLateToday: boolean },
+  habits: { weekdays: readonly number[]; tooLateToday: boolean; seasonThrough: Evening },
 ): Evening[] {
   const rounds: Evening[] = [];
-  for (let ahead = habits.tooLateToday ? 1 : 0; ahead <= 14 && rounds.length < 2; ahead += 1) {
+  const last = Math.min(14, eveningsBetween(today, habits.seasonThrough));
+  for (let ahead = habits.tooLateToday ? 1 : 0; ahead <= last && rounds.length < 2; ahead += 1) {
     const evening = addEvenings(today, ahead);
     if (habits.weekdays.includes(weekdayOf(evening))) rounds.push(evening);
   }
@@ -76,21 +87,24 @@ const EVENINGS_WITHOUT_ROUNDS = 7;
 
 /**
  * Which of the four groups a prop is in.
- * at-risk: its chance of staying bright until somebody can next reach it, and the margin beyond, is under the
- * confidence, or somebody has seen it dim or dark. next-round: it gets there, but not to the round after.
+ * at-risk: its chance of staying bright until somebody can next reach it is under the confidence, or somebody has
+ * seen it fail and an evening that counts is still to come. next-round: it gets there, but not to the round after and
+ * the margin beyond it, so it is swapped on the next one.
  */
 export function groupOf(
   course: ChanceCourse,
   wanted: Wanted,
-  reach: { rounds: readonly Evening[]; marginNights: number; lastSeen: Seen | null },
+  reach: { rounds: readonly Evening[]; marginNights: number; failing: boolean },
 ): { group: Group; chanceBrightToNextRound: number } {
-  // A round is made before the gate opens, so the evening before it is the last one to be bridged.
-  const bridged = (round: Evening | undefined, otherwise: number) =>
-    addEvenings(round ?? addEvenings(wanted.today, otherwise), reach.marginNights - 1);
+  const bridged = (round: Evening | undefined, otherwise: number) => {
+    if (round === undefined) return addEvenings(wanted.today, otherwise);
+    return wanted.roundInTime(round) ? addEvenings(round, -1) : round;
+  };
   const toNext = chanceThrough(course, wanted, bridged(reach.rounds[0], EVENINGS_WITHOUT_ROUNDS));
-  const toFollowing = chanceThrough(course, wanted, bridged(reach.rounds[1], 2 * EVENINGS_WITHOUT_ROUNDS));
-  const failed = reach.lastSeen === 'dim' || reach.lastSeen === 'dark';
-  if (failed || toNext < wanted.confidence) return { group: 'at-risk', chanceBrightToNextRound: toNext };
+  const afterNext = bridged(reach.rounds[1], 2 * EVENINGS_WITHOUT_ROUNDS);
+  const toFollowing = chanceThrough(course, wanted, addEvenings(afterNext, reach.marginNights));
+  const failing = reach.failing && swapByOf(course, wanted) !== null;
+  if (failing || toNext < wanted.confidence) return { group: 'at-risk', chanceBrightToNextRound: toNext };
   if (toFollowing < wanted.confidence) return { group: 'next-round', chanceBrightToNextRound: toNext };
   return { group: 'fine', chanceBrightToNextRound: toNext };
 }

@@ -1,10 +1,18 @@
 import { type Evening, eveningOf } from '../model/evening.ts';
 import type { SiteForecastProp } from '../model/forecast.ts';
-import { type NotProjected, type PropProjection, rangeOf } from '../model/prop-forecast.ts';
+import type { NotProjected, PropProjection } from '../model/prop-forecast.ts';
 import { notProjectedWarning } from '../model/warnings.ts';
 import { eveningWeather } from '../model/weather.ts';
 import { eveningWords } from './evening-words.ts';
-import { type Asked, causeOf, courseOf, isProjected, leftShareAt, swapByFor } from './forecast-report.ts';
+import {
+  type Asked,
+  causeOf,
+  courseOf,
+  isProjected,
+  leftShareAt,
+  rangesOf,
+  swapByFor,
+} from './forecast-report.ts';
 import { type Group, groupOf } from './need.ts';
 
 /** One prop's line in the site's forecast. @param reach the next two rounds and the site's margin */
@@ -33,14 +41,14 @@ export function siteForecastProp(
   const { wanted } = asked;
   const { group, chanceBrightToNextRound } = groupOf(courseOf(outcome), wanted, {
     ...reach,
-    lastSeen: lastSeen?.seen ?? null,
+    failing: outcome.set.failing !== null,
   });
-  const dim = rangeOf(outcome.from, outcome.chanceBright);
+  const { dim, dark } = rangesOf(outcome, asked);
   return {
     ...who,
     group,
     dim,
-    dark: rangeOf(outcome.from, outcome.chanceLit),
+    dark,
     swapBy: swapByFor(outcome, wanted),
     cause: causeOf(outcome, dim),
     chanceBrightToNextRound,
@@ -61,8 +69,8 @@ function noteOf(of: {
   projection: PropProjection;
 }): string | null {
   const { asked, projection } = of;
-  const { lastSeen } = projection.set;
-  if (lastSeen?.seen === 'dim' || lastSeen?.seen === 'dark') return seenNote(asked, projection, lastSeen);
+  const { failing } = projection.set;
+  if (failing && of.group === 'at-risk') return seenNote(asked, projection, failing);
   const next = of.reach.rounds[0];
   const until = next ? `the round on ${eveningWords(next)}` : 'a week from now';
   if (of.group === 'at-risk') {

@@ -22,13 +22,13 @@ function constantNights(nightsC: number[], litHours: number): Schedule {
     poweredHours: Array(count).fill(24),
     trips: Array(count).fill(0),
     showNight: Array(count).fill(false),
-    total: { litHours: count * litHours, poweredHours: count * 24, trips: 0 },
     checkFrom: Array.from({ length: count + 1 }, (_, n) => n * looks.length),
     checkLitHours: checks.map(({ look }) => look * litHours),
     checkGoneShare: checks.map(({ look }) => look),
     checkAirC: checks.map(({ airC }) => airC),
     nightC: nightsC,
     nightSigmaC: Array(count).fill(0),
+    warmestFromC: Array(count + 1).fill(40),
   };
 }
 

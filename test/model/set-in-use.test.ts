@@ -57,8 +57,18 @@ describe('the set in use', () => {
       partBatch: null,
     });
   });
-  it('counts a first swap as whole, whatever count was given', () => {
-    expect(setInUse(prop, [swap(5, { cells: 2 })], 10)!.partBatch).toBeNull();
+  it('says of a first swap too that it was not whole', () => {
+    expect(setInUse(prop, [swap(5, { cells: 2 })], 10)).toMatchObject({
+      fittedAt: 5,
+      partBatch: { newCells: 2, ofCells: 3 },
+    });
+  });
+  it('takes a set for failing until it is swapped or seen bright; an odd look takes nothing back', () => {
+    const failing = (...log: LogEntry[]) => setInUse(prop, log, 10)!.failing?.seen ?? null;
+    expect(failing(swap(1), seen(3, 'dark'))).toBe('dark');
+    expect(failing(swap(1), seen(3, 'dark'), seen(4, 'odd'))).toBe('dark');
+    expect(failing(swap(1), seen(3, 'dark'), seen(4, 'bright'))).toBeNull();
+    expect(failing(swap(1), seen(3, 'dark'), swap(5))).toBeNull();
   });
   it('remembers the last thing seen of this set, not of the one before', () => {
     expect(setInUse(prop, [swap(1), seen(3, 'dim')], 10)!.lastSeen).toEqual({ seen: 'dim', at: 3 });

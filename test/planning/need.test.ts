@@ -9,20 +9,32 @@ import {
 } from '../../server/planning/need.ts';
 
 // Thursday 22 October 2026 and the evenings after it.
-const course = (chanceBright: number[], shows: number[]): ChanceCourse => ({
+const course = (brightOn: number[], shows: number[]): ChanceCourse => ({
   from: '2026-10-22',
-  evenings: chanceBright.length,
-  chanceBright,
+  evenings: brightOn.length,
+  brightOn,
   showNight: (n) => shows.includes(n),
 });
-const wanted: Wanted = { everyEvening: false, confidence: 0.9, today: '2026-10-22' };
+// Rounds start in the evening here, too late for that evening's visitors.
+const wanted: Wanted = {
+  everyEvening: false,
+  confidence: 0.9,
+  today: '2026-10-22',
+  roundInTime: () => false,
+};
+const byDay: Wanted = { ...wanted, roundInTime: () => true };
 
 describe('swap by', () => {
   it('is the evening before the first show night that falls short', () => {
     expect(swapByOf(course([1, 0.95, 0.8, 0.5, 0.1], [0, 3, 4]), wanted)).toBe('2026-10-24');
   });
-  it('takes no notice of nights off', () => {
+  it('is that night itself where rounds are made before the gate opens', () => {
+    expect(swapByOf(course([1, 0.95, 0.8, 0.5, 0.1], [0, 3, 4]), byDay)).toBe('2026-10-25');
+  });
+  it('takes no notice of nights off, nor of a cold one that the set comes back from', () => {
     expect(swapByOf(course([1, 0.5, 0.5, 0.5], [0]), wanted)).toBeNull();
+    expect(swapByOf(course([1, 0.1, 1, 0.95], [0, 2, 3]), wanted)).toBeNull();
+    expect(swapByOf(course([0.1, 0.1, 1, 0.95], [2, 3]), { ...wanted, today: '2026-10-23' })).toBeNull();
   });
   it('is today when tonight already falls short', () => {
     expect(swapByOf(course([0.4, 0.1], [0, 1]), wanted)).toBe('2026-10-22');
@@ -46,7 +58,8 @@ describe('swap by', () => {
 });
 
 describe('chance through an evening', () => {
-  it('is that of the last evening that counts', () => {
+  it('is that of the worst evening that counts', () => {
+    expect(chanceThrough(course([1, 0.2, 0.9, 0.95], [0, 2, 3]), wanted, '2026-10-25')).toBe(0.9);
     expect(chanceThrough(course([1, 0.9, 0.7, 0.4], [1, 3]), wanted, '2026-10-24')).toBe(0.9);
     expect(chanceThrough(course([1, 0.9, 0.7, 0.4], [1, 3]), wanted, '2026-10-25')).toBe(0.4);
   });
@@ -57,49 +70,65 @@ describe('chance through an evening', () => {
 
 describe('next rounds', () => {
   it('are the next allowed weekdays', () => {
-    expect(nextRounds('2026-10-22', { weekdays: [3, 6], tooLateToday: false })).toEqual([
-      '2026-10-24',
-      '2026-10-28',
-    ]);
+    expect(
+      nextRounds('2026-10-22', { weekdays: [3, 6], tooLateToday: false, seasonThrough: '2026-11-30' }),
+    ).toEqual(['2026-10-24', '2026-10-28']);
   });
   it('include today unless its hour has passed', () => {
-    expect(nextRounds('2026-10-24', { weekdays: [3, 6], tooLateToday: false })[0]).toBe('2026-10-24');
-    expect(nextRounds('2026-10-24', { weekdays: [3, 6], tooLateToday: true })[0]).toBe('2026-10-28');
-    expect(nextRounds('2026-10-24', { weekdays: [6], tooLateToday: true })).toEqual([
-      '2026-10-31',
-      '2026-11-07',
-    ]);
+    expect(
+      nextRounds('2026-10-24', { weekdays: [3, 6], tooLateToday: false, seasonThrough: '2026-11-30' })[0],
+    ).toBe('2026-10-24');
+    expect(
+      nextRounds('2026-10-24', { weekdays: [3, 6], tooLateToday: true, seasonThrough: '2026-11-30' })[0],
+    ).toBe('2026-10-28');
+    expect(
+      nextRounds('2026-10-24', { weekdays: [6], tooLateToday: true, seasonThrough: '2026-11-30' }),
+    ).toEqual(['2026-10-31', '2026-11-07']);
+  });
+  it('are none after the season', () => {
+    const habits = { weekdays: [3, 6], tooLateToday: false };
+    expect(nextRounds('2026-10-24', { ...habits, seasonThrough: '2026-10-26' })).toEqual(['2026-10-24']);
+    expect(nextRounds('2026-10-24', { ...habits, seasonThrough: '2026-10-20' })).toEqual([]);
   });
   it('are none where nobody has said when', () => {
-    expect(nextRounds('2026-10-24', { weekdays: [], tooLateToday: false })).toEqual([]);
+    expect(
+      nextRounds('2026-10-24', { weekdays: [], tooLateToday: false, seasonThrough: '2026-11-30' }),
+    ).toEqual([]);
   });
 });
 
 describe('groups', () => {
-  const reach = { rounds: ['2026-10-24', '2026-10-28'], marginNights: 1, lastSeen: null };
+  // Rounds on Saturday the 24th and Wednesday the 28th.
+  const reach = { rounds: ['2026-10-24', '2026-10-28'], marginNights: 1, failing: false };
   const every = { ...wanted, everyEvening: true };
+  const everyByDay = { ...byDay, everyEvening: true };
   const falling = (n: number) =>
     course(
       Array.from({ length: 12 }, (_, i) => (i < n ? 1 : 0.5)),
       [],
     );
-  it('at risk: falls short before somebody can get there, the margin counted', () => {
-    expect(groupOf(falling(2), every, reach).group).toBe('at-risk');
-    // It falls short on the evening of the round itself: that is the one night of margin.
-    expect(groupOf(falling(2), every, { ...reach, marginNights: 0 }).group).toBe('next-round');
+  it('at risk: falls short before somebody can get there', () => {
+    expect(groupOf(falling(1), everyByDay, reach).group).toBe('at-risk');
+    // It falls short on the evening of the round: in time where rounds are made by day, too late where by night.
+    expect(groupOf(falling(2), everyByDay, reach)).toEqual({
+      group: 'next-round',
+      chanceBrightToNextRound: 1,
+    });
+    expect(groupOf(falling(2), every, reach)).toEqual({ group: 'at-risk', chanceBrightToNextRound: 0.5 });
   });
-  it('next round: gets there, but not to the one after', () => {
-    expect(groupOf(falling(3), every, reach)).toEqual({ group: 'next-round', chanceBrightToNextRound: 1 });
-    expect(groupOf(falling(6), every, reach).group).toBe('next-round');
+  it('next round: gets there, but not to the one after and the margin beyond', () => {
+    expect(groupOf(falling(6), everyByDay, reach).group).toBe('next-round');
+    expect(groupOf(falling(6), everyByDay, { ...reach, marginNights: 0 }).group).toBe('fine');
+    expect(groupOf(falling(7), every, reach).group).toBe('next-round');
   });
-  it('fine: reaches the round after', () => {
-    expect(groupOf(falling(7), every, reach).group).toBe('fine');
+  it('fine: reaches the round after and the margin beyond', () => {
+    expect(groupOf(falling(7), everyByDay, reach).group).toBe('fine');
+    expect(groupOf(falling(8), every, reach).group).toBe('fine');
   });
-  it('a report of dim or dark beats the sum, bright and odd do not', () => {
-    expect(groupOf(falling(12), every, { ...reach, lastSeen: 'dim' }).group).toBe('at-risk');
-    expect(groupOf(falling(12), every, { ...reach, lastSeen: 'dark' }).group).toBe('at-risk');
-    expect(groupOf(falling(12), every, { ...reach, lastSeen: 'odd' }).group).toBe('fine');
-    expect(groupOf(falling(2), every, { ...reach, lastSeen: 'bright' }).group).toBe('at-risk');
+  it('a report of failing beats the sum while an evening that counts is to come', () => {
+    const failed = course([0, 0, 0], [2]);
+    expect(groupOf(failed, byDay, { ...reach, failing: true }).group).toBe('at-risk');
+    expect(groupOf(course([0, 0, 0], []), byDay, { ...reach, failing: true }).group).toBe('fine');
   });
   it('thinks a week ahead where nobody makes rounds', () => {
     const alone = { ...reach, rounds: [], marginNights: 0 };

@@ -33,7 +33,7 @@ export function aSeason(from: Evening, through: Evening): Season {
     through,
     asOf: instantInEvening(from, '12:00', PLACE.timeZone),
   });
-  return { place: PLACE, from, through, weather, showNights };
+  return { place: PLACE, from, through, closes: through, weather, showNights };
 }
 
 const SORTS: Partial<Prop>[] = [
@@ -109,7 +109,7 @@ const SORTS: Partial<Prop>[] = [
     stopVolts: 3,
     load: { behaviour: 'steady', standbyMa: 0.35 },
     switching: { kind: 'by-hand' },
-    trips: { perShowNight: 120, perNightOff: 10, seconds: 12, runMa: 180 },
+    trips: { perShowNight: 120, perNightOff: 0, seconds: 12, runMa: 180 },
   },
   {
     cellTypeId: 'R14',

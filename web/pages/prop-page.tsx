@@ -175,6 +175,7 @@ function PropAnswer({ forecast, line, tonight }: AnswerProps) {
     <section class="answer" aria-label="Answer">
       <p class="lead">{`${capital(dimWords(forecast.dim, tonight))}${swap}.`}</p>
       {line?.note && <p>{line.note}</p>}
+      {dimsUnseen(forecast) && <p class="soft">It may look dim before that, on nights without visitors.</p>}
       <dl class="facts">
         {line && (
           <Fact name="Group">
@@ -196,6 +197,11 @@ function PropAnswer({ forecast, line, tonight }: AnswerProps) {
       )}
     </section>
   );
+}
+
+/** Whether it may go dim on a night off before it has to be swapped. */
+function dimsUnseen({ dim, swapBy }: PropForecast): boolean {
+  return dim.early !== null && swapBy !== null && dim.early < swapBy;
 }
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);

@@ -22,15 +22,18 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
       ))}
       <ol class="steps">
         <Step title="It takes tonight" result={mah(why.mahTonight)}>
-          {why.meanMa === null ? 'no draw is known' : `${ma(why.meanMa)} lit`} for{' '}
-          {hours(why.litHoursTonight)}, and {ma(why.standbyMa)} while it waits
+          {why.meanMa === null
+            ? 'not lit by itself'
+            : `${ma(why.meanMa)} lit for ${hours(why.litHoursTonight)}`}
+          , and {ma(why.standbyMa)} while it waits
           {(isDefault('standbyMa') || isDefault('meanMa')) && (
             <>
               {' '}
               <Default />
             </>
           )}
-          {prop.trips && `, and ${prop.trips.perShowNight} trips of ${prop.trips.seconds} s on a show night`}
+          {prop.trips &&
+            `, and ${mah(why.tripMahTonight)} for trips of ${prop.trips.seconds} s at ${ma(prop.trips.runMa)}`}
         </Step>
         <Step
           title="The set gives tonight, before it looks dim"
@@ -38,11 +41,10 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
         >
           {mah(why.capacityMah)} on the label
           <Factor value={why.cutOffShare} words={`down to ${figures(prop.dimVolts)} V`} />
-          <Factor value={why.rateShare} words="at this draw" />
+          <Factor value={why.rateShare} words={`at ${ma(why.rateMa)}`} />
           <Factor value={why.coldShare} words={`at ${degrees(why.tonightC)}`} />
           <Factor value={why.weakestShare} words="for the weakest cell of the set" />
           <Factor value={why.healthShare} words="for the age of the set" />
-          <Factor value={why.leftAtStartShare} words="in it when it was fitted" />
           {usableMah !== null && (
             <span class="soft">. In a warm room it would be {mah(usableMah.at20C)}.</span>
           )}
@@ -51,6 +53,7 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
           {forecast.fittedAt === null
             ? 'no swap on record'
             : `fitted ${shortMomentWords(Date.parse(forecast.fittedAt), timeZone)}${forecast.usedShare === null ? '' : `; that is ${percent(forecast.usedShare)} of what it gives`}`}
+          {why.leftAtStartShare < 1 && `, with ${percent(1 - why.leftAtStartShare)} gone from it before`}
         </Step>
         <Step title="It drains at" result={`${drainFactor.likely.toFixed(2)} × the sum`}>
           between {drainFactor.low.toFixed(2)} and {drainFactor.high.toFixed(2)} times, four times in five:

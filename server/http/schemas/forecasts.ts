@@ -23,10 +23,14 @@ export const ForecastNight = Type.Object({
 export const Warning = Type.Object({ code: Type.String(), text: Type.String() });
 
 export const Why = Type.Object({
-  meanMa: Nullable(Type.Number()),
+  meanMa: Nullable(
+    Type.Number({ description: 'While lit tonight: of a fading light, at its present volts.' }),
+  ),
   standbyMa: Type.Number(),
   litHoursTonight: Type.Number(),
+  tripMahTonight: Type.Number({ description: 'What trips take of it.' }),
   mahTonight: Type.Number(),
+  rateMa: Type.Number({ description: 'Current for which rateShare was looked up.' }),
   capacityMah: Type.Number(),
   coldShare: Type.Number(),
   rateShare: Type.Number(),
