@@ -19,7 +19,7 @@ const fieldsOf = (changes: Partial<Prop>) => {
 describe('what cannot be is refused, what is only unlikely passes', () => {
   test.each([
     ['LR6', 3, 3.3],
-    // users.md §7 calls 3.8 V on three nickel cells dim from the start when lit; fresh off the charger they reach it.
+    // Three nickel cells fall below 3.8 V soon after they are lit, but fresh off the charger they reach it: unlikely, not impossible.
     ['HR6', 3, 3.8],
     ['6LR61', 1, 9],
     ['PB12V7', 1, 12.6],
@@ -30,7 +30,7 @@ describe('what cannot be is refused, what is only unlikely passes', () => {
     expect(fieldsOf({ cellTypeId, series, dimVolts })).toEqual([]);
   });
 
-  // Fresh open-circuit volts: alkaline 1.65 at most, nickel 1.45, coin 3.3, lead 2.14 a cell (cells.md).
+  // Fresh open-circuit volts: alkaline 1.65 at most, nickel 1.45, coin 3.3, lead 2.14 a cell (common practice, no source).
   test.each([
     ['LR6', 3, 5.6],
     ['HR6', 3, 4.8],

@@ -3,7 +3,7 @@ import { A_SITE, aProp, aSiteWithProp } from '../rig/a-site.ts';
 import { aRig, dumpOf, type Rig } from '../rig/build-app.ts';
 
 // Each row: what somebody slipped on, what they sent, which field must be named, and what the sentence must say.
-// '…' stands for any words between. The slips are those of users.md §7, as far as they are impossible and not only unlikely.
+// '…' stands for any words between. Only what cannot be is refused; what is merely unlikely passes with a warning.
 type Row = [slip: string, body: unknown, field: string, says: string];
 
 async function refused(rig: Rig, ask: () => ReturnType<Rig['ask']['get']>, row: Row): Promise<void> {

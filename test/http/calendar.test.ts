@@ -5,7 +5,7 @@ import { answerErrors } from '../../server/http/errors.ts';
 import { type CalendarReader, calendarRoutes } from '../../server/http/routes/calendar.ts';
 import { Problem } from '../../server/http/schemas/errors.ts';
 
-// What a calendar program sees, whatever is in the calendar. Source of the headers: interop.md §1, HTTP.
+// What a calendar program sees, whatever is in the calendar. Source: RFC 9110 (ETag 8.8.3, If-None-Match 13.1.2, 304 15.4.5), RFC 5545 8.1 (text/calendar), RFC 6266 (file name).
 async function aFeed(read: CalendarReader) {
   const app = fastify();
   app.addSchema(Problem);

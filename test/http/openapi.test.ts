@@ -17,7 +17,7 @@ async function aDocument(): Promise<{
   return { document, operations };
 }
 
-// The paths are those of design.md §6, without rounds, plan and CSV, which are not served yet.
+// What programs of a crew may rely on: a path that is taken away or renamed must be taken away here too.
 const CONTRACT = `
 GET /api/health
 POST /api/sites

@@ -99,7 +99,7 @@ describe('cell types', () => {
     expect(changed.body).toEqual({ ...added.body, priceEach: 0.4 });
     const all = (await ask.get('/api/cell-types').expect(200)).body;
     expect(all[0]).toEqual(changed.body);
-    // The designations that design.md §6 promises.
+    // The designations of IEC 60086, 61951 and 61960 (from memory) that a shop prints on its packets; lead by its volts and ampere-hours.
     const ids = new Set(all.map((type: { id: string }) => type.id));
     for (const id of 'LR6 LR03 LR14 LR20 6LR61 R6 FR6 FR03 HR6 HR03 HR14 HR20 ICR18650 INR21700 IFR18650 CR2032 PB12V7'.split(
       ' ',
