@@ -33,7 +33,7 @@ const forecast = forecastSite(deps, { siteId, asOf });
 console.log(`\nPellmoss Lantern Lane as of ${eveningWords(forecast.evening)} 2026, 09:00`);
 console.log(`Next round: ${forecast.nextRound ? eveningWords(forecast.nextRound) : 'none planned'}\n`);
 console.log(swapTable(forecast));
-console.log('\nReminders, not assurance: follow your local codes, your insurer and your venue.\n');
+console.log('\nReminders, not assurance: the rules of your place, your insurer and your venue come first.\n');
 store.close();
 
 const server = path.join(path.dirname(fileURLToPath(import.meta.url)), '..', 'server', 'main.js');

@@ -235,7 +235,7 @@ function thirdWeek(demo: Demo): void {
     seen: 'odd',
     volts: 3.72,
     taken: 'resting',
-    note: '1.24 V a cell indoors: cold, not flat.',
+    note: 'Warmed up in the kitchen: 1.24 V a cell. It was the frost.',
   });
   see(demo, 'C-04', {
     when: at(october(30), '18:05'),

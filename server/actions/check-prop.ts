@@ -29,7 +29,7 @@ function voltsFaults(prop: Prop, cellType: CellType): Fault[] {
   }
   const freshVolts = freshSetVolts(prop.series, cellType);
   if (dimVolts > freshVolts) {
-    const message = `${dimVolts} V is more than a fresh set gives: ${prop.series} × ${cellType.id} end to end is about ${freshVolts.toFixed(1)} V at most, so this would be dim from the start. Other cells, or more of them in series?`;
+    const message = `${dimVolts} V is more than a fresh set gives: ${prop.series} × ${cellType.id} end to end is about ${freshVolts.toFixed(1)} V at most, so it would never look bright. Other cells, or more of them in series?`;
     faults.push({ field: 'dimVolts', message });
   }
   return faults;

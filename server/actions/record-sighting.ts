@@ -45,5 +45,7 @@ function readingFaults({ volts, taken }: NewSighting): Fault[] {
 
 function hintsFor({ volts, taken }: Sighting): string[] {
   if (taken !== 'resting') return [];
-  return [`${volts} V resting says little: only a reading with the light on counts. Take one?`];
+  return [
+    `${volts} V resting says little: most cells recover when nothing draws. Measure once more while it is lit?`,
+  ];
 }

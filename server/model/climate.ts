@@ -241,7 +241,7 @@ export function monthlyExtremesOf(typicalYear: TypicalYear): {
 /**
  * Air temperature of the usual year at an instant, °C.
  * From twelve months: two harmonics in true solar time, whose range is less than maximum - minimum because mean
- * daily extremes hold weather as well as sun; no sunrise is needed, so polar night works. A typical year is read
+ * daily extremes hold weather as well as sun; it asks for no sunrise and so holds in polar night. A typical year is read
  * off its smoothed hours. Never report a coldest night from it: it misses the cold tail by 4 to 12 K.
  * Source: shape and amplitude fitted on 60 US stations and 269 typical years; the Sun of `sun-day.ts`.
  * @param climate from `climateOf` or `climateOfTypicalYear`

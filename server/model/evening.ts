@@ -5,7 +5,7 @@ import { check, checkFinite } from './check.ts';
 /** A moment: milliseconds since 1970-01-01T00:00:00Z, leap seconds not counted. */
 export type Instant = number;
 
-/** A local date naming the stretch from that local noon to the next local noon: '2026-10-25'. */
+/** A date, '2026-10-25', that stands for the night after it: noon of that day to noon of the day after, by the zone's clock. */
 export type Evening = string;
 
 export const HOUR_MS = 3_600_000;

@@ -3,7 +3,7 @@ import type { Switching } from './switching.ts';
 
 export type Importance = 'must-not-fail' | 'feature' | 'background';
 
-/** A lit item looked after as one thing; a row is a prop with more than one unit, each on its own set. */
+/** Anything lit that the crew counts as one; a row is a prop with more than one unit, each on its own set. */
 export type Prop = {
   id: string;
   siteId: string;

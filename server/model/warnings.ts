@@ -116,7 +116,7 @@ function labelWarnings(type: CellType): Warning[] {
   return [
     {
       code: 'label-unreal',
-      text: `No ${largest.words} made holds ${type.capacityMah} mAh; tests of such labels found a small part of it. Use ${largest.instead} until you have measured one.`,
+      text: `No ${largest.words} made holds ${type.capacityMah} mAh; cells with such labels gave far less when tested. Use ${largest.instead} until you have measured one.`,
     },
   ];
 }

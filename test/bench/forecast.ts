@@ -182,7 +182,7 @@ async function overHttp(): Promise<void> {
   ];
   console.log(
     `unchanged read again, ${(size / 1024).toFixed(0)} kB: with its ETag ${(unchanged / floorRate).toFixed(2)} ×, whole ${(whole / floorRate).toFixed(2)} × ` +
-      `the requests per second of a bare route that returns a constant of the same size`,
+      `the requests per second of a route that does nothing but send the same number of bytes`,
   );
   await app.close();
   await floor.close();

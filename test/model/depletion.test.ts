@@ -86,7 +86,7 @@ describe('a cold snap', () => {
     expect(words[11]).toBe('dark-used-up');
   });
 
-  it('a prop that draws less than the sum lives through it: the cold moves the limit, never the state', () => {
+  it('a prop that draws less than the sum lives through it: cold lowers the limit and uses nothing up', () => {
     // On the coldest night the limit is 1251 mAh and 8 nights are 2240 mAh: bright through it below 0.559.
     expect(course.brightBelow[7]).toBeCloseTo(1251 / 2240, 2);
     // Two milder nights later a prop drawing 0.59 of the sum, dark for part of the snap, is lit right through again.

@@ -117,7 +117,7 @@ describe('worked examples', () => {
     const spell = darkSpell('2003-10-16', golden, -0.8333);
     expect(secondsApart(spell.duskAt, '2003-10-16T17:20:19-07:00')).toBeLessThan(5);
     expect(secondsApart(spell.dawnAt, '2003-10-17T06:12:43-07:00')).toBeLessThan(5);
-    // The evening of the 17th is 87 s earlier by ERFA.
+    // By ERFA sunset comes 87 s earlier a day later.
     const next = darkSpell('2003-10-17', golden, -0.8333);
     expect(secondsApart(next.duskAt, '2003-10-17T17:18:52-07:00')).toBeLessThan(5);
   });

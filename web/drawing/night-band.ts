@@ -27,7 +27,7 @@ const AXIS_Y = COLD_Y + 14;
 const HEIGHT = AXIS_Y + 30;
 
 /**
- * Dusk and dawn against the clock through the season: time runs down from early evening to the morning, one
+ * Each night's dusk and dawn by the wall clock: time runs down from early evening to the morning, one
  * column a night. Gate hours stand inside, crossed out when called off; cold nights are marked below.
  */
 export function nightBand(

@@ -55,8 +55,8 @@ export function Frame({ children }: { children: ComponentChildren }) {
       </main>
       <footer class="foot">
         <p>
-          Dates are ranges that hold four times in five. They tell when to look, not that a light will burn: a
-          decorative light is never the light people rely on.
+          Dates are ranges meant to hold four times in five. They tell when to look, not that a light will
+          burn: nobody should have to find the way by a decoration.
         </p>
       </footer>
     </>

@@ -2,11 +2,11 @@ import type { CellType, Prop } from '../api/types.ts';
 
 /** Said once at set-up and under every caution. */
 export const REMINDER =
-  'Reminders, not assurance: follow your local codes, your insurer and your venue\u2019s rules.';
+  'Reminders, not assurance: the rules of your place, your insurer and your venue come first.';
 
 export const SITE_CAUTIONS = [
-  'A decorative light is never the light people rely on. Steps, edges, exits and crossings need lighting that does not depend on this plan.',
-  'Mains work is for licensed people. Chargers near wet ground need the proper outdoor protection.',
+  'Nobody should have to find the way by a decoration. Light steps, edges, exits and crossings by something that burns whatever this plan says.',
+  'Leave mains work to an electrician. Chargers near wet ground need the proper outdoor protection.',
   'A round at night: a second person for ladders, water and roadside stops, and somebody who notices if you are not back.',
 ];
 
@@ -15,7 +15,7 @@ const MIXING =
 const LITHIUM_ION = [
   'Charge between 0 and 40 °C only. Let a cold pack reach room temperature first: cold charging does harm that shows later as fire.',
   'Never charge unattended, or across the way out; charge on something that cannot burn.',
-  'A swollen, dropped, dented or wet pack does not go back on charge. No loose cells in a pocket with keys.',
+  'A pack that has swollen, fallen or got wet is never charged again. Carry spare cells in a box, away from metal.',
 ];
 
 /** After public safety advice; own words. */
@@ -41,9 +41,9 @@ const BY_KIND: Record<CellType['kind'], string[]> = {
   'lithium-ion': LITHIUM_ION,
   'lithium-iron': LITHIUM_ION,
   coin: [
-    'Swallowed, a coin cell injures within two hours, often without a sign at first. Go to emergency care at once; do not wait for symptoms.',
+    'Swallowed, a coin cell injures within two hours, and nothing may show it at first: emergency care at once, however well all seems.',
     'Adults only. Count the cells out and count them in; search for a dropped one before you walk on.',
-    'The lid should need a tool, or two actions at once. Tape used cells before disposal.',
+    'The lid should open only with a tool, or by two movements at the same time. Tape used cells before disposal.',
   ],
   lead: [
     'Keep it upright, and cover the poles: a short circuit burns.',

@@ -16,7 +16,7 @@ const fields = {
       'lead',
     ],
     {
-      slip: 'Say which chemistry: the box cells in decorations are often zinc-carbon and last about a third as long as alkaline.',
+      slip: 'Say which chemistry: cells that came with a decoration may be zinc-carbon, good for about a third of the hours of alkaline.',
     },
   ),
   capacityMah: number(1, 1_000_000, { slip: 'mAh of one cell. Cells end to end add volts, not mAh.' }),

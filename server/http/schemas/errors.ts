@@ -2,7 +2,7 @@ import { type Static, Type } from 'typebox';
 
 export const FieldFault = Type.Object({
   field: Type.String({ description: 'Where in the request, as a path: `load.peakMa`.' }),
-  message: Type.String({ description: 'The number, the likely slip and the way out.' }),
+  message: Type.String({ description: 'What was sent, what probably happened and what to do.' }),
 });
 
 /** RFC 9457. */

@@ -28,6 +28,6 @@ describe('cautions', () => {
 
   it('never promises', () => {
     expect(REMINDER).toMatch(/not assurance/);
-    expect(SITE_CAUTIONS.join(' ')).toMatch(/never the light people rely on/);
+    expect(SITE_CAUTIONS.join(' ')).toMatch(/find the way by a decoration/);
   });
 });

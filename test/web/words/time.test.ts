@@ -71,7 +71,7 @@ describe('moments in the zone of the site', () => {
 });
 
 describe('evenings', () => {
-  // By definition an evening is the stretch from that local noon to the next; after-midnight deeds belong to the one before.
+  // By definition an evening runs from noon of its date to noon of the day after; after-midnight deeds belong to the one before.
   it.each([
     ['2026-10-23T00:40', '2026-10-22', '2026-10-22'],
     ['2026-10-23T05:59', '2026-10-22', '2026-10-22'],
