@@ -4,33 +4,11 @@ import { builtInCellType } from '../../server/model/cell-types-built-in.ts';
 import { COURSE_WORDS, deplete } from '../../server/model/depletion.ts';
 import { instantInEvening } from '../../server/model/evening.ts';
 import { type PropProjection, projectProp } from '../../server/model/prop-forecast.ts';
-import type { Schedule } from '../../server/model/schedule.ts';
 import { stepHourByHour } from '../bench/hour-by-hour.ts';
 import { holdTo } from '../reference/accuracy.ts';
+import { constantNights } from '../rig/constant-nights.ts';
 import { aSeason, freshSet, manyProps } from '../rig/many-props.ts';
 import { plainQuestion } from '../rig/plainly.ts';
-
-/** Nights of `litHours` at one temperature each, with a look at the beginning, in the middle and at the end. */
-function constantNights(nightsC: number[], litHours: number): Schedule {
-  const count = nightsC.length;
-  const looks = [0, 0.5, 1];
-  const checks = nightsC.flatMap((airC) => looks.map((look) => ({ airC, look })));
-  return {
-    from: '2026-12-01',
-    count,
-    litHours: Array(count).fill(litHours),
-    poweredHours: Array(count).fill(24),
-    trips: Array(count).fill(0),
-    showNight: Array(count).fill(false),
-    checkFrom: Array.from({ length: count + 1 }, (_, n) => n * looks.length),
-    checkLitHours: checks.map(({ look }) => look * litHours),
-    checkGoneShare: checks.map(({ look }) => look),
-    checkAirC: checks.map(({ airC }) => airC),
-    nightC: nightsC,
-    nightSigmaC: Array(count).fill(0),
-    warmestFromC: Array(count + 1).fill(40),
-  };
-}
 
 const oneCell: CellSet = { type: builtInCellType('LR6')!, series: 1, parallel: 1, healthShare: 1 };
 const demand = { rateMa: 20, peakMa: 40 };
