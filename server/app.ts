@@ -7,6 +7,7 @@ import { readCalendar } from './actions/read-calendar.ts';
 import type { Clock } from './clock.ts';
 import { packageRoot } from './config.ts';
 import { answerErrors, answerFrameworkError, answerUnreadable } from './http/errors.ts';
+import { takeFiles } from './http/files.ts';
 import { guard } from './http/guards.ts';
 import { logSerializers } from './http/log-lines.ts';
 import { describeApi } from './http/openapi.ts';
@@ -15,6 +16,7 @@ import { limitRates } from './http/rate-limit.ts';
 import { calendarRoutes } from './http/routes/calendar.ts';
 import { calendarLinkRoutes } from './http/routes/calendar-links.ts';
 import { cellTypeRoutes } from './http/routes/cell-types.ts';
+import { csvRoutes } from './http/routes/csv.ts';
 import { forecastRoutes } from './http/routes/forecasts.ts';
 import { healthRoutes } from './http/routes/health.ts';
 import { logRoutes } from './http/routes/log.ts';
@@ -75,7 +77,11 @@ export function buildApp(options: AppOptions): FastifyInstance {
     calendarLinkRoutes(routes, deps, publicUrl);
     calendarRoutes(routes, (secret) => readCalendar(deps, { secret }));
   });
-  app.register(async (routes) => weatherRoutes(routes, deps));
+  app.register(async (routes) => {
+    takeFiles(routes);
+    weatherRoutes(routes, deps);
+    csvRoutes(routes, deps);
+  });
   servePages(app, options.webRoot ?? join(root, 'dist', 'web'));
   return app;
 }

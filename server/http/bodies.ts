@@ -1,11 +1,12 @@
 import type { NewProp as NewPropInput } from '../actions/add-prop.ts';
 import type { PropChanges as PropChangesInput } from '../actions/change-prop.ts';
 import { yearFaults } from '../actions/known-years.ts';
-import { refuseFaults } from '../actions/refusal.ts';
+import { type Fault, refuseFaults } from '../actions/refusal.ts';
 import { check } from '../model/check.ts';
 import { type Instant, parseInstant } from '../model/evening.ts';
 import type { Switching as SwitchingValue } from '../model/switching.ts';
-import type { NewProp, PropChanges, Switching } from './schemas/props.ts';
+import { NewProp, type PropChanges, type Switching } from './schemas/props.ts';
+import { faultFinder } from './validate.ts';
 
 /**
  * An instant of a checked request.
@@ -28,6 +29,14 @@ export function asOfIn(query: { asOf?: string }): { asOf?: Instant } {
 /** A new prop as the actions take it. */
 export function newPropOf(body: NewProp): NewPropInput {
   return { ...body, switching: switchingOf(body.switching) };
+}
+
+const newPropFaults = faultFinder(NewProp);
+
+/** A new prop out of a file, checked as one in a body is. */
+export function readNewProp(value: unknown): { prop: NewPropInput } | { faults: Fault[] } {
+  const faults = newPropFaults(value);
+  return faults.length > 0 ? { faults } : { prop: newPropOf(value as NewProp) };
 }
 
 /** Changes to a prop as the actions take them. */

@@ -70,7 +70,7 @@ export function problemOf(error: unknown): HttpProblem {
 
 const BAD_JSON =
   'The body is no JSON. A comma too many, a quote missing, or numbers like NaN are the usual slips.';
-const TOO_LARGE = 'The body is larger than this address takes: 1 MiB of JSON, or 16 MiB of a weather file.';
+const TOO_LARGE = 'The body is larger than this address takes: 1 MiB of JSON, or 16 MiB of a file.';
 
 /** What the framework may throw, in our words. */
 const FRAMEWORK_ERRORS: Record<string, [ProblemCode, string]> = {

@@ -4,7 +4,7 @@ import { Compile } from 'typebox/compile';
 import Format from 'typebox/format';
 import { Settings } from 'typebox/system';
 import { Value } from 'typebox/value';
-import { Refusal } from '../actions/refusal.ts';
+import { type Fault, Refusal } from '../actions/refusal.ts';
 import { isEvening, parseInstant } from '../model/evening.ts';
 import { faultsOf, MOST_FAULTS } from './faults.ts';
 
@@ -32,3 +32,13 @@ export const validatorCompiler: FastifySchemaCompiler<TSchema> = ({ schema, http
     return { error: new Refusal('invalid', faults) };
   };
 };
+
+/**
+ * What is wrong with a value that is no whole request, field by field; nothing when it fits.
+ * @param schema what it must be
+ */
+export function faultFinder(schema: TSchema): (value: unknown) => Fault[] {
+  const compiled = Compile(schema);
+  return (value) =>
+    compiled.Check(value) ? [] : faultsOf(schema, { value, errors: compiled.Errors(value), whole: 'body' });
+}

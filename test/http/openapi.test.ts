@@ -45,6 +45,10 @@ GET /api/props/{propId}/log
 DELETE /api/props/{propId}/log/{entryId}
 GET /api/props/{propId}/forecast
 GET /api/sites/{siteId}/forecast
+POST /api/sites/{siteId}/props/import
+GET /api/sites/{siteId}/props.csv
+GET /api/sites/{siteId}/log.csv
+GET /api/sites/{siteId}/forecast.csv
 POST /api/sites/{siteId}/calendar-links
 GET /api/sites/{siteId}/calendar-links
 DELETE /api/sites/{siteId}/calendar-links/{linkId}`
@@ -146,7 +150,7 @@ test('an unknown id is 404 in the same words on every route', async () => {
     const path = template.replace('{evening}', '2026-10-20').replace(/\{\w+\}/g, 'nobody');
     const asked = ask[method.toLowerCase() as 'get'](path);
     const answer =
-      operationId === 'importWeather'
+      operationId === 'importWeather' || operationId === 'importProps'
         ? await asked.set('content-type', 'text/csv').send('time,tempC\n')
         : await asked.send(bodies[operationId]);
     expect([name, answer.status, answer.body.code]).toEqual([name, 404, 'not-found']);
