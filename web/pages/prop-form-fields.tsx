@@ -101,8 +101,6 @@ function setWords(cellType: CellType | undefined, fields: Fields): string {
 
 export function DrawFields({ form }: Part) {
   const bind = bindTo(form);
-  const isMean = form.fields.measured === 'mean';
-  const hasShare = form.fields['load.wave'] === 'blink' || form.fields['load.wave'] === 'rc-fade';
   return (
     <fieldset class="form-part">
       <legend>What it takes, for one of a row</legend>
@@ -114,42 +112,7 @@ export function DrawFields({ form }: Part) {
           { value: 'low-peak', words: 'lowest and highest' },
         ]}
       />
-      {isMean ? (
-        <TextField
-          label="Average while lit"
-          unit="mA"
-          inputMode="decimal"
-          {...bind('load.meanMa')}
-          hint="A meter that shows 0.022 A reads 22 mA"
-        />
-      ) : (
-        <>
-          <div class="field-pair">
-            <TextField label="Lowest" unit="mA" inputMode="decimal" {...bind('load.lowMa')} />
-            <TextField label="Highest" unit="mA" inputMode="decimal" {...bind('load.peakMa')} />
-          </div>
-          <PickField
-            label="How it goes between them"
-            {...pickTo(form)('load.wave')}
-            options={[
-              { value: 'even-fade', words: 'fades up and down evenly' },
-              { value: 'blink', words: 'blinks, on or off' },
-              { value: 'rc-fade', words: 'jumps up, dies away' },
-              { value: 'steady', words: 'steady' },
-            ]}
-          />
-          {hasShare && (
-            <TextField
-              label="Share of the time high or rising"
-              unit="%"
-              inputMode="decimal"
-              optional
-              width="short"
-              {...bind('load.onShare')}
-            />
-          )}
-        </>
-      )}
+      <CurrentFields form={form} />
       <div class="field-pair">
         <TextField
           label="While it waits"
@@ -189,6 +152,51 @@ export function DrawFields({ form }: Part) {
         />
       )}
     </fieldset>
+  );
+}
+
+/** The current itself: one average, or its two ends and the way between them. */
+function CurrentFields({ form }: Part) {
+  const bind = bindTo(form);
+  if (form.fields.measured === 'mean') {
+    return (
+      <TextField
+        label="Average while lit"
+        unit="mA"
+        inputMode="decimal"
+        {...bind('load.meanMa')}
+        hint="A meter that shows 0.022 A reads 22 mA"
+      />
+    );
+  }
+  const hasShare = form.fields['load.wave'] === 'blink' || form.fields['load.wave'] === 'rc-fade';
+  return (
+    <>
+      <div class="field-pair">
+        <TextField label="Lowest" unit="mA" inputMode="decimal" {...bind('load.lowMa')} />
+        <TextField label="Highest" unit="mA" inputMode="decimal" {...bind('load.peakMa')} />
+      </div>
+      <PickField
+        label="How it goes between them"
+        {...pickTo(form)('load.wave')}
+        options={[
+          { value: 'even-fade', words: 'fades up and down evenly' },
+          { value: 'blink', words: 'blinks, on or off' },
+          { value: 'rc-fade', words: 'jumps up, dies away' },
+          { value: 'steady', words: 'steady' },
+        ]}
+      />
+      {hasShare && (
+        <TextField
+          label="Share of the time high or rising"
+          unit="%"
+          inputMode="decimal"
+          optional
+          width="short"
+          {...bind('load.onShare')}
+        />
+      )}
+    </>
   );
 }
 

@@ -1,6 +1,6 @@
 import { useState } from 'preact/hooks';
 import { api } from '../api/client.ts';
-import type { MadeCalendarLink, Site } from '../api/types.ts';
+import type { CalendarLink, MadeCalendarLink, Site } from '../api/types.ts';
 import { TextField, TickField } from '../parts/field.tsx';
 import { FormTrouble, Status, Trouble } from '../parts/notice.tsx';
 import { useForm } from '../state/form.ts';
@@ -39,26 +39,12 @@ export function SiteCalendar({ site }: { site: Site }) {
       {links.problem && <Trouble problem={links.problem} onAgain={() => void links.again()} />}
       <ul class="links">
         {(links.value ?? []).map((link) => (
-          <li key={link.id}>
-            <span>
-              {link.label ?? 'without a name'}
-              {link.alarms && ', with alarms'}
-              <span class="soft">
-                made {shortMomentWords(Date.parse(link.createdAt), site.timeZone)};{' '}
-                {link.lastReadAt
-                  ? `last read ${shortMomentWords(Date.parse(link.lastReadAt), site.timeZone)}`
-                  : 'never read yet'}
-              </span>
-            </span>
-            <button
-              type="button"
-              class="quiet"
-              onClick={() => void revoke(link.id)}
-              aria-label={`Take back the link ${link.label ?? 'without a name'}`}
-            >
-              Take back
-            </button>
-          </li>
+          <LinkLine
+            key={link.id}
+            link={link}
+            timeZone={site.timeZone}
+            onTakeBack={() => void revoke(link.id)}
+          />
         ))}
       </ul>
       <Status>{made && <MadeLink made={made} />}</Status>
@@ -89,6 +75,33 @@ export function SiteCalendar({ site }: { site: Site }) {
         an address inside your own network; only a program on the same network can.
       </p>
     </section>
+  );
+}
+
+type LinkLineProps = { link: CalendarLink; timeZone: string; onTakeBack: () => void };
+
+function LinkLine({ link, timeZone, onTakeBack }: LinkLineProps) {
+  return (
+    <li>
+      <span>
+        {link.label ?? 'without a name'}
+        {link.alarms && ', with alarms'}
+        <span class="soft">
+          made {shortMomentWords(Date.parse(link.createdAt), timeZone)};{' '}
+          {link.lastReadAt
+            ? `last read ${shortMomentWords(Date.parse(link.lastReadAt), timeZone)}`
+            : 'never read yet'}
+        </span>
+      </span>
+      <button
+        type="button"
+        class="quiet"
+        onClick={onTakeBack}
+        aria-label={`Take back the link ${link.label ?? 'without a name'}`}
+      >
+        Take back
+      </button>
+    </li>
   );
 }
 

@@ -3,16 +3,18 @@ import { api } from '../api/client.ts';
 import type { ShowNight, Site } from '../api/types.ts';
 import { TextField } from '../parts/field.tsx';
 import { FormTrouble, Status, Trouble } from '../parts/notice.tsx';
-import { useForm } from '../state/form.ts';
+import { type Form, useForm } from '../state/form.ts';
 import { useRead } from '../state/read.ts';
 import { useShell } from '../state/shell.tsx';
 import { addDays, dateWords } from '../words/time.ts';
+
+const UNTOUCHED = { evening: '', opensAt: '', closesAt: '' };
 
 /** The evenings visitors come, with gate hours; one may be called off or put in late. Every deed is kept at once. */
 export function SiteShowNights({ site, onSaved }: { site: Site; onSaved: () => void }) {
   const { asOf } = useShell();
   const read = useRead(`show-nights ${site.id} ${asOf}`, () => api.showNights(site.id, asOf));
-  const form = useForm({ evening: '', opensAt: '', closesAt: '' });
+  const form = useForm(UNTOUCHED);
   const [said, setSaid] = useState('');
   const nights = read.value ?? [];
   const last = nights.at(-1);
@@ -27,7 +29,7 @@ export function SiteShowNights({ site, onSaved }: { site: Site; onSaved: () => v
     const saved = await form.send(() => api.setShowNights(site.id, next));
     setSaid(saved ? words : '');
     if (!saved) return;
-    form.reset({ evening: '', opensAt: '', closesAt: '' });
+    form.reset(UNTOUCHED);
     onSaved();
     await read.again();
   };
@@ -61,37 +63,45 @@ export function SiteShowNights({ site, onSaved }: { site: Site; onSaved: () => v
         ))}
       </ul>
       <Status>{said}</Status>
-      <form
-        onSubmit={(event) => {
-          event.preventDefault();
-          void add();
-        }}
-      >
-        <FormTrouble text={form.trouble} />
-        <TextField
-          label="Another evening"
-          type="date"
-          value={typed.evening}
-          onText={(text) => form.set('evening', text)}
-          hint="One that is there already gets the new hours"
-        />
-        <div class="field-pair">
-          <TextField
-            label="Gate opens"
-            type="time"
-            value={typed.opensAt}
-            onText={(text) => form.set('opensAt', text)}
-          />
-          <TextField
-            label="Gate closes"
-            type="time"
-            value={typed.closesAt}
-            onText={(text) => form.set('closesAt', text)}
-          />
-        </div>
-        <button type="submit">Add this night</button>
-      </form>
+      <AddNight form={form} typed={typed} onAdd={() => void add()} />
     </section>
+  );
+}
+
+type AddNightProps = { form: Form<typeof UNTOUCHED>; typed: typeof UNTOUCHED; onAdd: () => void };
+
+function AddNight({ form, typed, onAdd }: AddNightProps) {
+  return (
+    <form
+      onSubmit={(event) => {
+        event.preventDefault();
+        onAdd();
+      }}
+    >
+      <FormTrouble text={form.trouble} />
+      <TextField
+        label="Another evening"
+        type="date"
+        value={typed.evening}
+        onText={(text) => form.set('evening', text)}
+        hint="One that is there already gets the new hours"
+      />
+      <div class="field-pair">
+        <TextField
+          label="Gate opens"
+          type="time"
+          value={typed.opensAt}
+          onText={(text) => form.set('opensAt', text)}
+        />
+        <TextField
+          label="Gate closes"
+          type="time"
+          value={typed.closesAt}
+          onText={(text) => form.set('closesAt', text)}
+        />
+      </div>
+      <button type="submit">Add this night</button>
+    </form>
   );
 }
 

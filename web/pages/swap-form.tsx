@@ -3,7 +3,7 @@ import { api, onceKey } from '../api/client.ts';
 import type { CellType, NewSwap, Prop } from '../api/types.ts';
 import { ChoiceField, PickField, TextField } from '../parts/field.tsx';
 import { FormTrouble } from '../parts/notice.tsx';
-import { type Reader, useForm } from '../state/form.ts';
+import { type Form, type Reader, useForm } from '../state/form.ts';
 import { useShell } from '../state/shell.tsx';
 import { KIND_WORDS } from '../words/names.ts';
 import { counted } from '../words/quantity.ts';
@@ -12,25 +12,25 @@ import type { OnDone } from './sighting-buttons.tsx';
 
 type SwapFormProps = { prop: Prop; cellTypes: CellType[]; timeZone: string; onDone: OnDone };
 
+const usualSwap = (cellTypeId: string, wholeSet: number) => ({
+  at: '',
+  state: '',
+  leftShare: '',
+  cellTypeId,
+  cells: String(wholeSet),
+  setId: '',
+  oldSet: '',
+  note: '',
+});
+
 /** One form, filled in beforehand for the usual: now, a full set of new cells of the usual type. */
 export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
   const { momentAt } = useShell();
   const wholeSet = prop.units * prop.series * prop.parallel;
   const isRechargeable = cellTypes.find(({ id }) => id === prop.cellTypeId)?.rechargeable ?? false;
-  const fresh = () => ({
-    at: '',
-    state: '',
-    leftShare: '',
-    cellTypeId: prop.cellTypeId,
-    cells: String(wholeSet),
-    setId: '',
-    oldSet: '',
-    note: '',
-  });
-  const form = useForm<Record<keyof ReturnType<typeof fresh>, string>>(fresh());
+  const form = useForm(usualSwap(prop.cellTypeId, wholeSet));
   const key = useRef(onceKey());
   const { fields, faults } = form;
-  const picked = cellTypes.find(({ id }) => id === fields.cellTypeId);
   // Untouched, the moment keeps up with the clock, and the usual state with the list of cell types.
   const at = fields.at || wallStamp(momentAt, timeZone);
   const state = fields.state || (isRechargeable ? 'charged' : 'new');
@@ -41,7 +41,7 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
     );
     if (!swap) return;
     key.current = onceKey();
-    form.reset(fresh());
+    form.reset(usualSwap(prop.cellTypeId, wholeSet));
     await onDone('Swap recorded.', { hints: swap.hints ?? [], undoId: swap.id });
   };
 
@@ -81,64 +81,81 @@ export function SwapForm({ prop, cellTypes, timeZone, onDone }: SwapFormProps) {
         <button type="submit" class="button-main" aria-disabled={form.busy}>
           Record swap of {counted(Number(fields.cells) || wholeSet, 'cell')}
         </button>
-        <details class="more" open={Object.keys(faults).length > 0}>
-          <summary>When, which cells, the old set</summary>
-          <TextField
-            label="When"
-            type="datetime-local"
-            value={at}
-            onText={(text) => form.set('at', text)}
-            fault={faults.at}
-            hint="Time at the site"
-          />
-          <PickField
-            label="Cell type"
-            value={fields.cellTypeId}
-            onPick={(id) => form.set('cellTypeId', id)}
-            fault={faults.cellTypeId}
-            options={cellTypeOptions(cellTypes, prop.cellTypeId)}
-          />
-          <TextField
-            label="Cells changed"
-            inputMode="numeric"
-            width="short"
-            value={fields.cells}
-            onText={(text) => form.set('cells', text)}
-            fault={faults.cells}
-            hint={`${wholeSet} is all of them`}
-          />
-          {picked?.rechargeable && (
-            <TextField
-              label="Set letter"
-              optional
-              width="short"
-              value={fields.setId}
-              onText={(text) => form.set('setId', text)}
-              fault={faults.setId}
-            />
-          )}
-          <ChoiceField
-            label="The old set looked"
-            value={fields.oldSet}
-            onPick={(seen) => form.set('oldSet', seen)}
-            fault={faults.oldSet}
-            options={[
-              { value: '', words: 'did not look' },
-              { value: 'bright', words: 'bright' },
-              { value: 'dim', words: 'dim' },
-              { value: 'dark', words: 'dark' },
-            ]}
-          />
-          <TextField
-            label="Note"
-            optional
-            value={fields.note}
-            onText={(text) => form.set('note', text)}
-            fault={faults.note}
-          />
-        </details>
+        <SwapDetails form={form} prop={prop} cellTypes={cellTypes} at={at} wholeSet={wholeSet} />
       </form>
     </section>
+  );
+}
+
+type SwapDetailsProps = {
+  form: Form<ReturnType<typeof usualSwap>>;
+  prop: Prop;
+  cellTypes: CellType[];
+  at: string;
+  wholeSet: number;
+};
+
+/** What is seldom other than usual, folded away until it is or a fault is in it. */
+function SwapDetails({ form, prop, cellTypes, at, wholeSet }: SwapDetailsProps) {
+  const { fields, faults } = form;
+  const isRechargeable = cellTypes.find(({ id }) => id === fields.cellTypeId)?.rechargeable ?? false;
+  return (
+    <details class="more" open={Object.keys(faults).length > 0}>
+      <summary>When, which cells, the old set</summary>
+      <TextField
+        label="When"
+        type="datetime-local"
+        value={at}
+        onText={(text) => form.set('at', text)}
+        fault={faults.at}
+        hint="Time at the site"
+      />
+      <PickField
+        label="Cell type"
+        value={fields.cellTypeId}
+        onPick={(id) => form.set('cellTypeId', id)}
+        fault={faults.cellTypeId}
+        options={cellTypeOptions(cellTypes, prop.cellTypeId)}
+      />
+      <TextField
+        label="Cells changed"
+        inputMode="numeric"
+        width="short"
+        value={fields.cells}
+        onText={(text) => form.set('cells', text)}
+        fault={faults.cells}
+        hint={`${wholeSet} is all of them`}
+      />
+      {isRechargeable && (
+        <TextField
+          label="Set letter"
+          optional
+          width="short"
+          value={fields.setId}
+          onText={(text) => form.set('setId', text)}
+          fault={faults.setId}
+        />
+      )}
+      <ChoiceField
+        label="The old set looked"
+        value={fields.oldSet}
+        onPick={(seen) => form.set('oldSet', seen)}
+        fault={faults.oldSet}
+        options={[
+          { value: '', words: 'did not look' },
+          { value: 'bright', words: 'bright' },
+          { value: 'dim', words: 'dim' },
+          { value: 'dark', words: 'dark' },
+        ]}
+      />
+      <TextField
+        label="Note"
+        optional
+        value={fields.note}
+        onText={(text) => form.set('note', text)}
+        fault={faults.note}
+      />
+    </details>
   );
 }
 
