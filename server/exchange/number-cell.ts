@@ -89,7 +89,7 @@ function notANumber(text: string, { shown }: Unit): string {
 
 function otherUnit(shown: string, given: string, unit: Unit): string {
   if (unit === MA && /^mah?h$|^ah$/i.test(given))
-    return `${shown}: ${given} is how much a cell holds. A draw is in mA: what the meter shows with the light on.`;
+    return `${shown}: ${given} is how much a cell holds. Give the current that a meter reads while it is lit, in mA.`;
   const wanted = unit.shown === '' ? 'a number without a unit' : unit.shown;
   return `${shown} is in ${given.slice(0, 10)}, and ${wanted} is wanted here.`;
 }
