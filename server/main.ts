@@ -13,10 +13,13 @@ export type Served = { url: string; close(): Promise<void> };
 /**
  * Opens the store, listens, and says so.
  * @param config the settings
- * @param given a store already open, or a clock of one's own
+ * @param given a store already open, a clock of one's own, or what to do as soon as it listens
  * @throws ConfigError when the port is taken or the address is not this machine's; StoreError for the database
  */
-export async function serve(config: Config, given: { store?: Store; clock?: Clock } = {}): Promise<Served> {
+export async function serve(
+  config: Config,
+  given: { store?: Store; clock?: Clock; onListening?: (served: Served) => void } = {},
+): Promise<Served> {
   const store = given.store ?? openStore(config.db, { onProgress: say });
   const clock = given.clock ?? (config.asOf === null ? systemClock() : fixedClock(config.asOf));
   const app = buildApp({ store, clock, publicUrl: config.publicUrl, logLevel: 'error' });
@@ -33,8 +36,10 @@ export async function serve(config: Config, given: { store?: Store; clock?: Cloc
   const { port } = app.server.address() as AddressInfo;
   const url = `http://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}/`;
   say(`Duskround serves ${config.db} at ${url}`);
+  const served = { url, close };
+  if (given.onListening) given.onListening(served);
   await reckonAhead(app);
-  return { url, close };
+  return served;
 }
 
 /** Sites whose forecast is reckoned before anybody asks: the first answer of a fresh process would be its slowest. */
@@ -43,6 +48,7 @@ const SITES_AHEAD = 3;
 async function reckonAhead(app: ReturnType<typeof buildApp>): Promise<void> {
   const headers = { host: 'localhost' };
   const sites = await app.inject({ url: `/api/sites?limit=${SITES_AHEAD}`, headers });
+  if (sites.statusCode !== 200) return;
   for (const { id } of sites.json<{ id: string }[]>()) {
     await app.inject({ url: `/api/sites/${id}/forecast`, headers });
   }
@@ -93,4 +99,8 @@ export async function runMain(run: () => Promise<void>): Promise<void> {
 // The path it was started by may be a link to this file.
 const startedBy = process.argv[1];
 const isProgram = startedBy !== undefined && realpathSync(startedBy) === fileURLToPath(import.meta.url);
-if (isProgram) await runMain(async () => closeOnSignal(await serve(readConfig())));
+if (isProgram) {
+  await runMain(async () => {
+    await serve(readConfig(), { onListening: closeOnSignal });
+  });
+}

@@ -1,3 +1,4 @@
+import { CELL_KINDS } from '../model/cell-kinds.ts';
 import type { CellType } from '../model/cell-type.ts';
 import { isRechargeable } from '../model/cell-types-built-in.ts';
 import { insertCellType, listCellTypes } from '../store/cell-types.ts';
@@ -9,6 +10,11 @@ import { tidyText } from './tidy-text.ts';
 
 export type NewCellType = Omit<CellType, 'id' | 'name' | 'cellsInside' | 'rechargeable' | 'builtIn'> &
   Partial<Pick<CellType, 'id' | 'name' | 'cellsInside' | 'rechargeable'>>;
+
+/** A block of six volts and more is made of several cells: their volts tell how many. */
+function cellsInsideOf({ kind, nominalVolts }: Pick<CellType, 'kind' | 'nominalVolts'>): number {
+  return Math.max(1, Math.round(nominalVolts / CELL_KINDS[kind].nominalVolts));
+}
 
 export const MOST_OWN_CELL_TYPES = 500;
 
@@ -24,7 +30,7 @@ export function addCellType(deps: Deps, input: NewCellType): CellType {
     ...input,
     id,
     name: tidyText(input.name ?? id),
-    cellsInside: input.cellsInside ?? 1,
+    cellsInside: input.cellsInside ?? cellsInsideOf(input),
     rechargeable: input.rechargeable ?? isRechargeable(input.kind),
     builtIn: false,
   };

@@ -9,7 +9,10 @@ import { tidyText } from './tidy-text.ts';
 
 /** What can change: the kind of cells cannot, since the log would then tell another story. */
 export type CellTypeChanges = Partial<
-  Pick<CellType, 'name' | 'capacityMah' | 'nominalVolts' | 'priceEach' | 'massG' | 'rechargeable'>
+  Pick<
+    CellType,
+    'name' | 'capacityMah' | 'nominalVolts' | 'cellsInside' | 'priceEach' | 'massG' | 'rechargeable'
+  >
 >;
 
 /**

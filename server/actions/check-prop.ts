@@ -42,8 +42,8 @@ function freshSetVolts(series: number, cellType: CellType): number {
 
 function loadFaults({ load, trips }: Prop): Fault[] {
   const faults = waveFaults(load);
-  const draws =
-    load.meanMa !== undefined || load.peakMa !== undefined || load.standbyMa > 0 || trips !== undefined;
+  const draws = (load.meanMa ?? 0) > 0 || (load.peakMa ?? 0) > 0 || trips !== undefined;
+  faults.push(...meanFaults(load), ...tripFaults(trips));
   if (!draws) {
     const message =
       "Nothing says what this takes. Give meanMa, the meter's average with the light on, or lowMa, peakMa and wave for a light that fades or blinks, or trips for one that visitors set off.";
@@ -52,18 +52,49 @@ function loadFaults({ load, trips }: Prop): Fault[] {
   return faults;
 }
 
-function waveFaults({ meanMa, lowMa, peakMa, wave }: Load): Fault[] {
+function meanFaults({ behaviour, meanMa, lowMa, peakMa, ledVolts, measuredVolts }: Load): Fault[] {
+  const faults: Fault[] = [];
+  if (meanMa !== undefined && peakMa !== undefined && meanMa > peakMa) {
+    const message = `meanMa ${meanMa} is above peakMa ${peakMa}, and an average cannot be above the highest. Were the two swapped?`;
+    faults.push({ field: 'load.meanMa', message });
+  }
+  if (meanMa !== undefined && lowMa !== undefined && meanMa > 0 && meanMa < lowMa) {
+    const message = `meanMa ${meanMa} is below lowMa ${lowMa}, and an average cannot be below the lowest. Were the two swapped?`;
+    faults.push({ field: 'load.meanMa', message });
+  }
+  if (
+    behaviour === 'fades' &&
+    ledVolts !== undefined &&
+    measuredVolts !== undefined &&
+    ledVolts >= measuredVolts
+  ) {
+    const message = `LEDs that stop at ${ledVolts} V could not have been lit at ${measuredVolts} V, where the draw was measured. Are the two swapped?`;
+    faults.push({ field: 'load.ledVolts', message });
+  }
+  return faults;
+}
+
+const NIGHT_SECONDS = 24 * 3600;
+
+function tripFaults(trips: Prop['trips']): Fault[] {
+  if (!trips) return [];
+  return (['perShowNight', 'perNightOff'] as const).flatMap((name) => {
+    const seconds = trips[name] * trips.seconds;
+    if (seconds <= NIGHT_SECONDS) return [];
+    const message = `${trips[name]} trips of ${trips.seconds} s are ${Math.round(seconds / 3600)} h in one night. Is the count of the whole season, or the length too long?`;
+    return [{ field: `trips.${name}`, message }];
+  });
+}
+
+function waveFaults({ meanMa, lowMa, peakMa }: Load): Fault[] {
   const faults: Fault[] = [];
   if (lowMa !== undefined && peakMa !== undefined && peakMa < lowMa) {
     const message = `peakMa ${peakMa} is below lowMa ${lowMa}. Were the two swapped?`;
     faults.push({ field: 'load.peakMa', message });
   }
-  // With a mean the rest is detail; without one all three are needed to make it.
-  if (meanMa !== undefined || (lowMa === undefined && peakMa === undefined)) return faults;
-  const missing = Object.entries({ lowMa, peakMa, wave }).filter(([, given]) => given === undefined);
-  for (const [name] of missing) {
-    const message = `lowMa, peakMa and wave make the average together, and ${name} is missing. Give it, or give meanMa, the meter's average, instead.`;
-    faults.push({ field: `load.${name}`, message });
+  if (lowMa !== undefined && peakMa === undefined && meanMa === undefined) {
+    const message = `lowMa ${lowMa} alone makes no average. Give peakMa, the highest of the fade, as well, or meanMa, the meter's average.`;
+    faults.push({ field: 'load.peakMa', message });
   }
   return faults;
 }

@@ -70,6 +70,8 @@ export function runOfEveningsFaults(
   return [];
 }
 
+const NEAR_POLE_DEG = 85;
+
 function zoneFaults(site: Site): Fault[] {
   if (!isTimeZone(site.timeZone)) {
     const near = nearNames(site.timeZone, Intl.supportedValuesOf('timeZone'));
@@ -78,7 +80,8 @@ function zoneFaults(site: Site): Fault[] {
       { field: 'timeZone', message: `No time zone is called ${JSON.stringify(site.timeZone)}.${guess}` },
     ];
   }
-  if (!isEvening(site.seasonFrom)) return [];
+  // Near a pole every longitude is as good as any other.
+  if (!isEvening(site.seasonFrom) || Math.abs(site.latitudeDeg) > NEAR_POLE_DEG) return [];
   const zoneHours = standardOffsetHours(site.timeZone, Number(site.seasonFrom.slice(0, 4)));
   const sunHours = site.longitudeDeg / 15;
   // By the date line there are places that keep the day of those across it: 12 h ahead and more, far in the west.

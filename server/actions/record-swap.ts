@@ -76,7 +76,7 @@ function hintsFor(swap: Swap, about: { prop: Prop; timeZone: string; log: LogEnt
   if (switching.kind === 'interval-timer' && (switching.setAt ?? 0) <= swap.at) {
     const offAt = swap.at + switching.onHours * HOUR_MS;
     hints.push(
-      `This timer starts now: lit ${wallTimeOf(swap.at, timeZone)} to ${wallTimeOf(offAt, timeZone)} each day.`,
+      `This timer starts now: lit ${wallTimeOf(swap.at, timeZone)} to ${wallTimeOf(offAt, timeZone)} each day. Switch it off and on at dusk if it should light then.`,
     );
   }
   const double = log.find((entry) => entry.kind === 'swap' && Math.abs(entry.at - swap.at) < DOUBLE_MS);

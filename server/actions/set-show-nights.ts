@@ -8,8 +8,8 @@ import { eveningFaults } from './known-years.ts';
 import { type Fault, refuseFaults } from './refusal.ts';
 
 /**
- * Replaces the list of show nights. What was known when is kept: a night new to the list counts as added now, one
- * called off as called off now, so that "as of last Tuesday" still shows last Tuesday's list.
+ * Replaces the list of show nights. Of each it is remembered when it was added and when called off, so that an earlier
+ * moment does not know it yet; nights taken out and hours changed are not remembered.
  * @param deps what a deed needs
  * @param input the site and its nights, wall times 'HH:MM' of the site, in any order
  * @returns the nights by evening
@@ -40,6 +40,12 @@ function nightFaults(night: ShowNight, among: { index: number; nights: ShowNight
   if (first !== among.index) {
     const message = `${night.evening} is listed twice, at places ${first + 1} and ${among.index + 1}. Keep one: an evening has one opening time.`;
     return [{ field: `${at}.evening`, message }];
+  }
+  // Within an evening a time before noon is of the morning after.
+  const order = (wallTime: string) => (wallTime < '12:00' ? `1${wallTime}` : `0${wallTime}`);
+  if (order(night.opensAt) > order(night.closesAt)) {
+    const message = `${night.evening} opens at ${night.opensAt} and closes at ${night.closesAt}, which comes before it in an evening, noon to noon. Were the two swapped?`;
+    return [{ field: `${at}.closesAt`, message }];
   }
   if (night.opensAt !== night.closesAt) return [];
   const message = `${night.evening} closes at ${night.closesAt}, the moment it opens. To cancel a night set calledOff to true.`;

@@ -65,7 +65,7 @@ function summaryOf({ stopCount, stops }: DueContent): string {
   const told = stopCount > TAGS_IN_SUMMARY ? TAGS_IN_SUMMARY - 1 : stopCount;
   const tags = stops.slice(0, told).map((stop) => oneLine(stop.tag));
   const more = stopCount > told ? ` and ${stopCount - told} more` : '';
-  return `Swap ${props} by tonight: ${tags.join(', ')}${more}`;
+  return `Swap ${props}: ${tags.join(', ')}${more}`;
 }
 
 function dueDescription(content: DueContent): string {

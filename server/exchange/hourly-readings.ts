@@ -35,7 +35,8 @@ export function hoursOfReadings(
     warnings.push('The lines are not in order of time; they were sorted.');
     readings.sort((one, other) => one.at - other.at || one.line - other.line);
   }
-  const single = withoutDuplicates(readings, { rejected, warnings });
+  const dated = withoutUnknownYears(readings, rejected);
+  const single = withoutDuplicates(dated, { rejected, warnings });
   const steady = withoutSpikes(single, rejected);
   const kept = withoutFlats(steady, { rejected, warnings });
   if (kept.length === 0) {
@@ -50,6 +51,20 @@ export function hoursOfReadings(
     );
   }
   return { hours: wholeHours(kept), kept, warnings };
+}
+
+/** Nobody lights a display before or after: further off, a date is a slip. */
+const FIRST_AT = Date.UTC(2000, 0, 1);
+const AFTER_LAST_AT = Date.UTC(2151, 0, 1);
+
+function withoutUnknownYears(readings: readonly Reading[], rejected: RejectedLines): Reading[] {
+  const known = readings.filter(({ at, line }) => {
+    if (at >= FIRST_AT && at < AFTER_LAST_AT) return true;
+    rejected.add(line, 'This line is dated outside 2000 to 2150. Is the year right?');
+    return false;
+  });
+  if (known.length > 0) return known;
+  throw new WeatherFileError('Every line is dated outside 2000 to 2150. Is the year right?');
 }
 
 type Notes = { rejected: RejectedLines; warnings: string[] };

@@ -1,5 +1,5 @@
 import type { TypicalYear } from '../model/climate.ts';
-import { YEAR_HOURS } from '../model/climate.ts';
+import { hourMissingThroughout, YEAR_HOURS } from '../model/climate.ts';
 import { numberOrNaN } from './csv-fields.ts';
 import type { Station } from './station.ts';
 import { COLDEST_C, HOTTEST_C } from './time-temp-csv.ts';
@@ -77,6 +77,7 @@ export function gatherTypicalYear(
     tempC[row.hourOfYear] = row.tempC;
   }
   checkComplete(tempC, rows);
+  checkEveryHour(tempC);
   fillShortGaps(tempC);
   const warnings: string[] = [];
   if (missing > 0)
@@ -139,6 +140,16 @@ function checkComplete(tempC: Float32Array, rows: number): void {
     `This file has a temperature for ${rows} of the ${YEAR_HOURS} hours of a year, ` +
       `and up to ${longestGap} are missing in a row. Likely the file was cut: a typical year must be whole, ` +
       'so download it again, or send the hours you have as a "time,tempC" CSV.',
+  );
+}
+
+/** The same hour missing for weeks would leave the climate without it, however full the file is otherwise. */
+function checkEveryHour(tempC: Float32Array): void {
+  const hour = hourMissingThroughout(tempC);
+  if (hour === null) return;
+  throw new WeatherFileError(
+    `Hour ${hour} has no temperature for over six weeks running. A typical year needs every hour of the day in every season: ` +
+      'download it again, or send the hours you have as a "time,tempC" CSV.',
   );
 }
 

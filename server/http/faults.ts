@@ -71,6 +71,15 @@ function sentences(error: TLocalizedValidationError, context: Context): Fault[] 
   }
 }
 
+const WITHOUT_OFFSET = /^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}(:\d{2}(\.\d+)?)?$/;
+
+function formatReason(value: unknown, format: string): string {
+  if (format !== 'date' && WITHOUT_OFFSET.test(String(value))) {
+    return `${show(value)} does not say in which zone: put Z or an offset like +01:00 behind it.`;
+  }
+  return `${show(value)} does not exist: no such ${format === 'date' ? 'date' : 'moment'} is in the calendar.`;
+}
+
 function reason(error: TLocalizedValidationError, { node, value }: Context): string {
   switch (error.keyword) {
     case 'type':
@@ -80,7 +89,7 @@ function reason(error: TLocalizedValidationError, { node, value }: Context): str
     case 'maximum':
       return `${value} is above ${error.params.limit}, the most taken here.`;
     case 'minLength':
-      return 'The text is empty.';
+      return String(value) === '' ? 'The text is empty.' : `${show(value)} is too short.`;
     case 'maxLength':
       return `The text has ${String(value).length} characters; at most ${error.params.limit} are kept.`;
     case 'minItems':
@@ -94,7 +103,7 @@ function reason(error: TLocalizedValidationError, { node, value }: Context): str
     case 'const':
       return `${show(value)} is not ${show(node.const)}.`;
     case 'format':
-      return `${show(value)} does not exist: no such ${node.format === 'date' ? 'date' : 'moment'} is in the calendar.`;
+      return formatReason(value, String(node.format));
     default:
       return `${show(value)} is not of the form wanted here.`;
   }

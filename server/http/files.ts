@@ -31,8 +31,7 @@ export async function fileTextIn(request: FastifyRequest): Promise<string> {
 async function fileIn(request: FastifyRequest): Promise<Buffer> {
   if (Buffer.isBuffer(request.body)) return request.body;
   let file: Buffer | undefined;
-  // To the end, so that a second file is noticed.
-  if (request.isMultipart()) for await (const part of request.files()) file = await part.toBuffer();
+  if (request.isMultipart()) file = await uploadedIn(request);
   if (file) return file;
   throw new HttpProblem(
     'invalid',
@@ -41,6 +40,21 @@ async function fileIn(request: FastifyRequest): Promise<Buffer> {
       faults: [{ field: 'file', message: 'The file is missing.' }],
     },
   );
+}
+
+async function uploadedIn(request: FastifyRequest): Promise<Buffer | undefined> {
+  let file: Buffer | undefined;
+  try {
+    // To the end, so that a second file is noticed.
+    for await (const part of request.files()) file = await part.toBuffer();
+  } catch (error) {
+    // What the framework foresaw has a code; what its parser throws at a broken form has none.
+    if (typeof (error as { code?: unknown }).code === 'string') throw error;
+    const message =
+      'The upload broke off, or is no form at all. Choose the file once more and send it again.';
+    throw new HttpProblem('invalid', message, { faults: [{ field: 'file', message }] });
+  }
+  return file;
 }
 
 // Files are UTF-8 or latin-1, and spreadsheets may write UTF-16; none says which.

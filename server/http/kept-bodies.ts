@@ -3,16 +3,23 @@ export type KeptBodies = { bodyOf(mark: string, write: () => string): string };
 
 /**
  * Keeps the last bodies that were asked for: every page of the crew asks for the same one.
- * @param most how many are kept, 1 or more
+ * @param mostLength how many characters are kept in all, 1 or more; the last body is kept whatever its length
  */
-export function keptBodies(most: number): KeptBodies {
+export function keptBodies(mostLength: number): KeptBodies {
   const kept = new Map<string, string>();
+  let length = 0;
   return {
     bodyOf(mark, write) {
-      const body = kept.get(mark) ?? write();
+      const known = kept.get(mark);
+      const body = known ?? write();
+      if (known === undefined) length += body.length;
       kept.delete(mark);
       kept.set(mark, body);
-      if (kept.size > most) kept.delete(kept.keys().next().value!);
+      for (const [oldest, { length: its }] of kept) {
+        if (length <= mostLength || oldest === mark) break;
+        kept.delete(oldest);
+        length -= its;
+      }
       return body;
     },
   };

@@ -3,6 +3,8 @@ import type { CellKind } from './cell-type.ts';
 /** What a chemistry does, whatever the size of the cell. Voltages are per cell, not per block. */
 export type CellKindFacts = {
   words: string;
+  /** Of one cell, not of a block. */
+  nominalVolts: number;
   /** Voltage at which the label capacity is counted as used, V. */
   cutOffVolts: number;
   /** Voltage at which one stops in practice: below it cells leak, reverse or are harmed, V. */
@@ -36,6 +38,7 @@ export const COLD_GRID_C = [-30, -20, -10, 0, 10, 20, 30, 40] as const;
 export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   alkaline: {
     words: 'Alkaline',
+    nominalVolts: 1.5,
     cutOffVolts: 0.9,
     practicalStopVolts: 0.9,
     curve: {
@@ -63,6 +66,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   'zinc-carbon': {
     words: 'Zinc-carbon',
+    nominalVolts: 1.5,
     cutOffVolts: 0.9,
     practicalStopVolts: 0.9,
     curve: {
@@ -87,6 +91,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   'lithium-aa': {
     words: 'Lithium, single-use',
+    nominalVolts: 1.5,
     cutOffVolts: 1,
     practicalStopVolts: 1,
     curve: {
@@ -111,6 +116,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   nickel: {
     words: 'Nickel, low self-discharge',
+    nominalVolts: 1.2,
     cutOffVolts: 1,
     practicalStopVolts: 1,
     curve: {
@@ -138,6 +144,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   'nickel-standard': {
     words: 'Nickel, standard',
+    nominalVolts: 1.2,
     cutOffVolts: 1,
     practicalStopVolts: 1,
     curve: {
@@ -165,6 +172,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   'lithium-ion': {
     words: 'Lithium-ion',
+    nominalVolts: 3.6,
     cutOffVolts: 2.5,
     practicalStopVolts: 3,
     curve: {
@@ -191,6 +199,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   'lithium-iron': {
     words: 'Lithium iron phosphate',
+    nominalVolts: 3.2,
     cutOffVolts: 2,
     practicalStopVolts: 2.8,
     curve: {
@@ -216,6 +225,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   coin: {
     words: 'Lithium coin',
+    nominalVolts: 3,
     cutOffVolts: 2,
     practicalStopVolts: 2.2,
     curve: {
@@ -239,6 +249,7 @@ export const CELL_KINDS: Readonly<Record<CellKind, CellKindFacts>> = {
   },
   lead: {
     words: 'Sealed lead',
+    nominalVolts: 2,
     cutOffVolts: 1.8,
     practicalStopVolts: 1.8,
     curve: {

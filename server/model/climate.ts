@@ -201,6 +201,19 @@ export function climateOfTypicalYear(
   };
 }
 
+/** An hour of the day that some date's window of 45 days lacks altogether; null when there is none. */
+export function hourMissingThroughout(tempC: Float32Array): number | null {
+  const window = 2 * SMOOTHING_DAYS + 1;
+  for (let hour = 0; hour < 24; hour++) {
+    let gap = 0;
+    for (let day = 0; day < 2 * 365; day++) {
+      gap = Number.isNaN(tempC[((day % 365) * 24 + hour) % YEAR_HOURS]!) ? gap + 1 : 0;
+      if (gap >= window) return hour;
+    }
+  }
+  return null;
+}
+
 /**
  * Mean daily minimum and maximum of each month of a typical year, °C; a day is its hours 1 to 24.
  * @param typicalYear 8760 hours; a day with no value at all is left out

@@ -45,11 +45,26 @@ describe('what cannot be is refused, what is only unlikely passes', () => {
     const nothing = { behaviour: 'steady', standbyMa: 0 } as const;
     const trips = { perShowNight: 50, perNightOff: 0, seconds: 10, runMa: 60 };
     expect(fieldsOf({ load: nothing })).toEqual(['load.meanMa']);
-    expect(fieldsOf({ load: { ...nothing, standbyMa: 0.05 } })).toEqual([]);
+    expect(fieldsOf({ load: { ...nothing, standbyMa: 0.05 } })).toEqual(['load.meanMa']);
+    expect(fieldsOf({ load: { ...nothing, meanMa: 0, standbyMa: 0.05 } })).toEqual(['load.meanMa']);
     expect(fieldsOf({ load: { ...nothing, meanMa: 0.022 } })).toEqual([]);
     expect(fieldsOf({ load: nothing, trips })).toEqual([]);
     expect(fieldsOf({ load: { ...nothing, lowMa: 2, peakMa: 40, wave: 'even-fade' } })).toEqual([]);
-    expect(fieldsOf({ load: { ...nothing, lowMa: 2, peakMa: 40 } })).toEqual(['load.wave']);
+    // Low and wave may be taken as usual, and are then marked; a low without a peak says nothing.
+    expect(fieldsOf({ load: { ...nothing, lowMa: 2, peakMa: 40 } })).toEqual([]);
+    expect(fieldsOf({ load: { ...nothing, peakMa: 40 } })).toEqual([]);
+    expect(fieldsOf({ load: { ...nothing, lowMa: 2 } })).toEqual(expect.arrayContaining(['load.peakMa']));
     expect(fieldsOf({ load: { ...nothing, lowMa: 2, peakMa: 40, meanMa: 20 } })).toEqual([]);
+  });
+
+  test('numbers that contradict each other are told', () => {
+    const load = { behaviour: 'steady', standbyMa: 0 } as const;
+    expect(fieldsOf({ load: { ...load, meanMa: 50, peakMa: 40 } })).toEqual(['load.meanMa']);
+    expect(fieldsOf({ load: { ...load, meanMa: 5, lowMa: 10, peakMa: 40 } })).toEqual(['load.meanMa']);
+    const led = { behaviour: 'fades', standbyMa: 0, meanMa: 20, measuredVolts: 4.5 } as const;
+    expect(fieldsOf({ load: { ...led, ledVolts: 6 } })).toEqual(['load.ledVolts']);
+    expect(fieldsOf({ load: { ...led, ledVolts: 2.9 } })).toEqual([]);
+    const trips = { perShowNight: 9000, perNightOff: 0, seconds: 60, runMa: 60 };
+    expect(fieldsOf({ load, trips })).toEqual(['trips.perShowNight']);
   });
 });

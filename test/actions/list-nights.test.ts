@@ -1,6 +1,8 @@
 import { describe, expect, test } from 'vitest';
 import { listNights } from '../../server/actions/list-nights.ts';
+import { localNoonAt } from '../../server/model/evening.ts';
 import type { Site } from '../../server/model/site.ts';
+import { sunAltitudeDeg } from '../../server/model/sun.ts';
 import { aSiteIn, someDeps } from '../rig/deps.ts';
 
 const HOUR_MS = 3_600_000;
@@ -65,5 +67,17 @@ describe('nights', () => {
     const svalbard = { latitudeDeg: 78.22, longitudeDeg: 15.65, timeZone: 'Arctic/Longyearbyen' };
     const [night] = nightsAt(svalbard, '2026-12-21');
     expect(night).toMatchObject({ sun: 'never-light', duskAt: null, dawnAt: null, darkHours: 24 });
+  });
+
+  test('have the dark hours that the altitude of the sun gives, minute by minute', () => {
+    // Invented: clocks three hours ahead of the sun, so that a long night ends after the local noon.
+    const place = { latitudeDeg: 70, longitudeDeg: 75.9, timeZone: 'Asia/Shanghai' };
+    // Civil: the sun 6° below the horizon. The altitude itself is held by the ephemerides of test/reference.
+    for (const { evening, darkHours } of nightsAt(place, '2026-12-08', '2026-12-12')) {
+      const noonAt = localNoonAt(evening, place.timeZone);
+      const minutes = Array.from({ length: 24 * 60 }, (_, minute) => noonAt + (minute + 0.5) * 60_000);
+      const dark = minutes.filter((at) => sunAltitudeDeg(at, place) < -6).length;
+      expect([evening, Math.abs(darkHours - dark / 60) < 0.1]).toEqual([evening, true]);
+    }
   });
 });

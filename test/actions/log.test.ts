@@ -28,7 +28,9 @@ describe('hints at a swap', () => {
     const { swap } = aPropIn({ switching: { kind: 'interval-timer', onHours: 6 } });
     // 13:20 UTC is 14:20 in Britain until 25 October 2026.
     const { hints } = swap({ at: Date.UTC(2026, 9, 21, 13, 20) });
-    expect(hints).toEqual(['This timer starts now: lit 14:20 to 20:20 each day.']);
+    expect(hints).toEqual([
+      'This timer starts now: lit 14:20 to 20:20 each day. Switch it off and on at dusk if it should light then.',
+    ]);
   });
 
   test('a timer set later than the swap says nothing yet', () => {

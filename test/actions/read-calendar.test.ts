@@ -70,7 +70,7 @@ test('one event for each evening the forecast wants a swap by, at the usual star
   const events = eventsOf(read());
   expect(events.map(({ startsAt }) => startsAt.slice(0, 10))).toEqual([...swapBys].sort());
   expect(events).toHaveLength(2);
-  expect(events.at(-1)!.summary).toBe('Swap 2 props by tonight: C-02, C-03');
+  expect(events.at(-1)!.summary).toBe('Swap 2 props: C-02, C-03');
   expect(events.at(-1)!.description).toContain('Ferny Bank · C-02 Moth lantern: 3 × AA alkaline (LR6)\n');
   // 16:30 in London after the clocks went back is 16:30 UTC.
   expect(events.at(-1)!.startsAt.slice(10)).toBe('T16:30:00Z');

@@ -93,8 +93,8 @@ test('both parsers read the same event, in UTC, to the second', () => {
   expect([event!.atMs('dtstart'), event!.atMs('dtend')]).toEqual([startsAt, endsAt]);
   expect([other!.start.getTime(), other!.end!.getTime()]).toEqual([startsAt, endsAt]);
   expect([event!.zoneOf('dtstart'), event!.zoneOf('dtend')]).toEqual(['UTC', 'UTC']);
-  expect(event!.value('summary')).toBe('Swap 2 props by tonight: B-06, B-08');
-  expect(other!.summary).toBe('Swap 2 props by tonight: B-06, B-08');
+  expect(event!.value('summary')).toBe('Swap 2 props: B-06, B-08');
+  expect(other!.summary).toBe('Swap 2 props: B-06, B-08');
   const description = [
     'Mill Walk: Sat 24 Oct, 18:30 (Europe/London), about 43 minutes.',
     '',
@@ -158,9 +158,9 @@ test('a long list is short in the summary and whole in the text', () => {
     const text = written([anEvent({ content: { stops: stops.slice(0, count), stopCount: count } })]);
     return readByIcalJs(text).events[0]!.value('summary');
   };
-  expect(summary(1)).toBe('Swap 1 prop by tonight: B-06');
-  expect(summary(4)).toBe('Swap 4 props by tonight: B-06, B-08, C-01, C-02');
-  expect(summary(5)).toBe('Swap 5 props by tonight: B-06, B-08, C-01 and 2 more');
+  expect(summary(1)).toBe('Swap 1 prop: B-06');
+  expect(summary(4)).toBe('Swap 4 props: B-06, B-08, C-01, C-02');
+  expect(summary(5)).toBe('Swap 5 props: B-06, B-08, C-01 and 2 more');
   const cut = written([anEvent({ content: { stops, stopCount: 65 } })]);
   expect(readByIcalJs(cut).events[0]!.value('description')).toContain('… and 60 more props.');
 });
@@ -176,7 +176,7 @@ describe('alarms', () => {
       expect(alarms).toHaveLength(1);
       expect(alarms[0]!.getFirstPropertyValue('action')).toBe('DISPLAY');
       expect(String(alarms[0]!.getFirstPropertyValue('trigger'))).toBe('-PT30M');
-      expect(alarms[0]!.getFirstPropertyValue('description')).toBe('Swap 2 props by tonight: B-06, B-08');
+      expect(alarms[0]!.getFirstPropertyValue('description')).toBe('Swap 2 props: B-06, B-08');
     }
     // eventc = BEGIN, properties, alarms, END. Source: RFC 5545 3.6.1.
     const ends = lines.flatMap((line, n) => (line === 'END:VALARM' ? [lines[n + 1]] : []));
@@ -193,7 +193,7 @@ describe('alarms', () => {
     const { events } = readByIcalJs(text);
     expect(events).toHaveLength(1);
     expect(events[0]!.component.getAllSubcomponents('valarm')).toHaveLength(1);
-    expect(events[0]!.value('summary')).toBe('Swap 1 prop by tonight: BEGIN:VALARM END:VALARM END:VEVENT');
+    expect(events[0]!.value('summary')).toBe('Swap 1 prop: BEGIN:VALARM END:VALARM END:VEVENT');
   });
 });
 
@@ -201,7 +201,7 @@ test('a cancelled event says so, in words and in status, and does not ring', () 
   const text = written([anEvent({ state: 'cancelled' })], { alarms: true });
   const [event] = readByIcalJs(text).events;
   expect(event!.value('status')).toBe('CANCELLED');
-  expect(event!.value('summary')).toBe('Cancelled: Swap 2 props by tonight: B-06, B-08');
+  expect(event!.value('summary')).toBe('Cancelled: Swap 2 props: B-06, B-08');
   expect(text).not.toContain('VALARM');
 });
 
@@ -227,7 +227,7 @@ test.each(TEXTS)('%s comes back from both parsers', (free) => {
     [events[0]!.value('summary'), events[0]!.value('description')],
     [other!.summary, other!.description],
   ]) {
-    expect(summary).toBe(`Swap 1 prop by tonight: ${free}`);
+    expect(summary).toBe(`Swap 1 prop: ${free}`);
     expect(String(description).split('\n')).toContain(`${free} · ${free} ${free}: 1 × ${free}`);
   }
 });
@@ -235,7 +235,7 @@ test.each(TEXTS)('%s comes back from both parsers', (free) => {
 test('a backslash before an n is no line break', () => {
   const stop = { ...anEvent().content.stops[0]!, tag: 'a\\nb\\Nc' };
   const text = written([anEvent({ content: { stops: [stop], stopCount: 1 } })]);
-  expect(readByIcalJs(text).events[0]!.value('summary')).toBe('Swap 1 prop by tonight: a\\nb\\Nc');
+  expect(readByIcalJs(text).events[0]!.value('summary')).toBe('Swap 1 prop: a\\nb\\Nc');
 });
 
 const INJECTION =
@@ -250,7 +250,7 @@ test('no free text can start a line of its own', () => {
   expect(lines.map((line) => line.split(/[:;]/)[0])).toEqual(plain);
   const kept = 'x ATTACH:http://example.org/ END:VEVENT BEGIN:VEVENT UID:y Z [1m';
   const [event] = readByIcalJs(text).events;
-  expect(event!.value('summary')).toBe(`Swap 1 prop by tonight: ${kept}`);
+  expect(event!.value('summary')).toBe(`Swap 1 prop: ${kept}`);
   expect(event!.value('description').split('\n')).toHaveLength(6);
 });
 
@@ -269,7 +269,7 @@ test('any text comes back, but for control characters and halves of letters', ()
       checkedLines(text);
       const { names, events } = readByIcalJs(text);
       expect(names).toEqual([`${name}: swaps due`, `${name}: swaps due`]);
-      expect(events[0]!.value('summary')).toBe(`Swap 1 prop by tonight: ${tag}`);
+      expect(events[0]!.value('summary')).toBe(`Swap 1 prop: ${tag}`);
       expect(events[0]!.value('description')).toContain(
         `Mill Race · ${tag} ${name}: 3 × AA alkaline (LR6)\n`,
       );

@@ -106,6 +106,11 @@ describe('an EPW file', () => {
     expect(file.typicalYear!.tempC[63 * 24 + 11]).toBe(1);
   });
 
+  test('that lacks the same hours for weeks is refused, however full it is otherwise', () => {
+    const lines = epw({ temp: (m, _d, h) => (m <= 2 && h <= 5 ? '99.9' : '5.0') });
+    expect(refusal(lines.join('\n'))).toMatch(/Hour [1-5] has no temperature for over six weeks/);
+  });
+
   test('rejects by line what is no temperature, no hour or no day', () => {
     const lines = epw({});
     lines[10] = lines[10]!.replace(/,\?9\?9,[^,]+/, ',?9?9,81.0');
@@ -316,8 +321,15 @@ describe('a time,temp CSV', () => {
   });
 
   test('with a year mistyped by a century is refused', () => {
-    const lines = ['time,temp', '1926-10-25T00:00Z,4', '2026-10-25T01:00Z,5'];
+    const lines = ['time,temp', '2126-10-25T00:00Z,4', '2026-10-25T01:00Z,5'];
     expect(refusal(lines.join('\n'))).toMatch(/60 years.*mistyped year/);
+  });
+
+  test('outside the years anybody lights a display in are left out, line by line', () => {
+    const lines = ['time,temp', '1900-01-01T00:00+05:00,5', '2026-10-25T00:00Z,4', '2026-10-25T01:00Z,5'];
+    const file = read(lines);
+    expect(file.rejected).toEqual([{ line: 2, message: expect.stringContaining('2000 to 2150') }]);
+    expect(refusal(lines.slice(0, 2).join('\n'))).toMatch(/2000 to 2150/);
   });
 
   test('tells how far it is', () => {

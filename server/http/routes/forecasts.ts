@@ -1,6 +1,7 @@
 import type { FastifyInstance } from 'fastify';
 import type { Deps } from '../../actions/deps.ts';
 import { forecastProp } from '../../actions/forecast-prop.ts';
+import { presentMoment } from '../../actions/forecast-season.ts';
 import { forecastSite, siteForecastMark } from '../../actions/forecast-site.ts';
 import { propForecastAnswer, siteForecastAnswer } from '../answers.ts';
 import { asOfIn } from '../bodies.ts';
@@ -9,13 +10,13 @@ import { hasAlready } from '../not-modified.ts';
 import { NotModified, ref } from '../responses.ts';
 import { ForecastQuery, PropForecast, SiteForecast, SiteForecastQuery } from '../schemas/forecasts.ts';
 
-const MOST_KEPT = 32;
+const MOST_KEPT_LENGTH = 16_000_000;
 
 /**
  * @param version of this program: another one may reckon otherwise, so what it sent is no longer good
  */
 export function forecastRoutes(app: FastifyInstance, deps: Deps, version: string): void {
-  const kept = keptBodies(MOST_KEPT);
+  const kept = keptBodies(MOST_KEPT_LENGTH);
 
   app.get<{ Params: { siteId: string }; Querystring: SiteForecastQuery }>(
     '/api/sites/:siteId/forecast',
@@ -28,7 +29,9 @@ export function forecastRoutes(app: FastifyInstance, deps: Deps, version: string
       },
     },
     async (request, reply) => {
-      const which = { ...request.params, ...asOfIn(request.query) };
+      // Asked once: across a quarter of an hour the mark and the body would else be of two moments.
+      const { siteId } = request.params;
+      const which = { siteId, asOf: asOfIn(request.query).asOf ?? presentMoment(deps, siteId) };
       const mark = siteForecastMark(deps, which);
       const etag = `W/"${version}-${mark}"`;
       reply.headers({ etag, 'cache-control': 'private, no-cache' });

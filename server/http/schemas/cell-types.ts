@@ -50,6 +50,7 @@ export const CellTypeChanges = Type.Object(
     name: Type.Optional(fields.name),
     capacityMah: Type.Optional(fields.capacityMah),
     nominalVolts: Type.Optional(fields.nominalVolts),
+    cellsInside: Type.Optional(fields.cellsInside),
     priceEach: Type.Optional(fields.priceEach),
     massG: Type.Optional(fields.massG),
     rechargeable: Type.Optional(fields.rechargeable),

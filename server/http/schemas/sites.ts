@@ -37,9 +37,11 @@ const twelve = (what: string) =>
 
 const siteFields = {
   name: text(120),
-  latitudeDeg: number(-90, 90, { slip: 'Degrees, north positive; 544 is probably 54.4.' }),
+  latitudeDeg: number(-90, 90, {
+    slip: 'Degrees north of the equator, south negative: was a decimal point left out?',
+  }),
   longitudeDeg: number(-180, 180, {
-    slip: 'Degrees, east positive and west negative; 24 for 2.4 is an easy slip.',
+    slip: 'Degrees east of Greenwich, west negative: was a decimal point left out?',
   }),
   timeZone: text(64, { slip: "An IANA name is wanted, like 'Europe/London'." }),
   seasonFrom: EveningField,
