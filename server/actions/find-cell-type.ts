@@ -4,7 +4,7 @@ import { findCellType, listCellTypes } from '../store/cell-types.ts';
 import type { Db } from '../store/open.ts';
 import type { Deps } from './deps.ts';
 import { didYouMean, nearNames } from './near-names.ts';
-import type { Fault } from './refusal.ts';
+import { type Fault, nothingCalled } from './refusal.ts';
 
 /**
  * A cell type, built in or the crew's own.
@@ -13,6 +13,18 @@ import type { Fault } from './refusal.ts';
  */
 export function findCellTypeAnywhere(deps: Pick<Deps, 'store'>, id: string): CellType | null {
   return builtInCellType(id) ?? findCellType(deps.store.db, id);
+}
+
+/**
+ * The cell type with an id, built in or the crew's own.
+ * @param deps what a deed needs
+ * @param id its id, as 'LR6'
+ * @throws Refusal 'not-found'
+ */
+export function cellTypeOf(deps: Pick<Deps, 'store'>, id: string): CellType {
+  const type = findCellTypeAnywhere(deps, id);
+  if (!type) throw nothingCalled('cell type', id);
+  return type;
 }
 
 /**

@@ -1,5 +1,5 @@
-import { type Evening, eveningSpan, eveningsFrom, HOUR_MS, type Instant } from '../model/evening.ts';
-import { type DarkSpell, darkSpell } from '../model/sun.ts';
+import { type Evening, eveningsFrom, type Instant } from '../model/evening.ts';
+import { type DarkSpell, darkHoursOf, darkSpell, SUNSET_ALTITUDE_DEG } from '../model/sun.ts';
 import type { ShowNight } from '../model/switching.ts';
 import { eveningWeather, type WeatherSource } from '../model/weather.ts';
 import { runOfEveningsFaults } from './check-site.ts';
@@ -16,6 +16,7 @@ export type Night = {
   /** Civil: the sun 6° below the horizon. */
   duskAt: Instant | null;
   dawnAt: Instant | null;
+  /** Between this evening's noon and the next, with the sun below civil dusk. */
   darkHours: number;
   /** Why a dusk or a dawn is missing: from there on it does not get dark, or does not get light. */
   sun?: 'never-dark' | 'never-light';
@@ -25,8 +26,6 @@ export type Night = {
   weather: WeatherSource;
 };
 
-// Refraction at the horizon and the sun's own radius. Source: the almanacs' convention of 50' below.
-const SUNSET_DEG = -0.833;
 const CIVIL_DEG = -6;
 
 /**
@@ -47,7 +46,7 @@ export function listNights(
   const asOf = input.asOf ?? deps.clock.now();
   const season = siteSeason(deps, site.id, { ...run, asOf });
   return eveningsFrom(run.from, run.through).map((evening) => {
-    const sun = darkSpell(evening, season.place, SUNSET_DEG);
+    const sun = darkSpell(evening, season.place, SUNSET_ALTITUDE_DEG);
     const civil = darkSpell(evening, season.place, CIVIL_DEG);
     const { meanC, minC, source } = eveningWeather(season.weather, evening);
     return {
@@ -56,7 +55,7 @@ export function listNights(
       sunriseAt: sun.dawnAt,
       duskAt: civil.duskAt,
       dawnAt: civil.dawnAt,
-      darkHours: darkHours(civil, eveningSpan(evening, season.place.timeZone)),
+      darkHours: darkHoursOf(evening, season.place, CIVIL_DEG),
       ...missing(civil),
       showNight: season.showNights.get(evening) ?? null,
       meanC,
@@ -64,11 +63,6 @@ export function listNights(
       weather: source,
     };
   });
-}
-
-function darkHours(civil: DarkSpell, span: ReturnType<typeof eveningSpan>): number {
-  if (civil.state === 'never-dark') return 0;
-  return Math.max(0, (civil.dawnAt ?? span.endAt) - (civil.duskAt ?? span.startAt)) / HOUR_MS;
 }
 
 function missing(civil: DarkSpell): Pick<Night, 'sun'> {

@@ -27,6 +27,9 @@ export type Night = {
   turnsOrigin: number;
 };
 
+/** Centre of the sun at sunset: refraction at the horizon and its own radius. Source: the almanacs' 50' below. */
+export const SUNSET_ALTITUDE_DEG = -0.833;
+
 // Named here once: under a bundler or test runner an imported function is looked up anew at each call, and these two are
 // called ten times a crossing.
 const sinDeclinationAt = sinDeclinationIn;

@@ -11,7 +11,7 @@ import {
   HOUR_MS,
   type Instant,
 } from './evening.ts';
-import { darkSpell, type Place } from './sun.ts';
+import { darkSpell, type Place, SUNSET_ALTITUDE_DEG } from './sun.ts';
 
 export type WeatherSource = 'observed' | 'forecast' | 'climate';
 
@@ -43,7 +43,6 @@ export type SeasonWeather = {
   evenings: EveningWeather[];
 };
 
-const SUNSET_ALTITUDE_DEG = -0.833;
 /** Missing hours in a row that still count as known once bridged. Common practice, no source. */
 const SHORT_GAP_HOURS = 3;
 /** An evening counts as known from this many known hours on. Ours. */

@@ -70,10 +70,10 @@ describe('nights', () => {
   });
 
   test('have the dark hours that the altitude of the sun gives, minute by minute', () => {
-    // Invented: clocks three hours ahead of the sun, so that a long night ends after the local noon.
-    const place = { latitudeDeg: 70, longitudeDeg: 75.9, timeZone: 'Asia/Shanghai' };
+    // Invented: clocks three hours ahead of the sun, where the polar night begins.
+    const place = { latitudeDeg: 78.22, longitudeDeg: 75.9, timeZone: 'Asia/Shanghai' };
     // Civil: the sun 6° below the horizon. The altitude itself is held by the ephemerides of test/reference.
-    for (const { evening, darkHours } of nightsAt(place, '2026-12-08', '2026-12-12')) {
+    for (const { evening, darkHours } of nightsAt(place, '2026-11-05', '2026-11-18')) {
       const noonAt = localNoonAt(evening, place.timeZone);
       const minutes = Array.from({ length: 24 * 60 }, (_, minute) => noonAt + (minute + 0.5) * 60_000);
       const dark = minutes.filter((at) => sunAltitudeDeg(at, place) < -6).length;

@@ -32,6 +32,7 @@ POST /api/sites/{siteId}/weather
 PUT /api/sites/{siteId}/weather/nights/{evening}
 GET /api/cell-types
 POST /api/cell-types
+GET /api/cell-types/{cellTypeId}
 PATCH /api/cell-types/{cellTypeId}
 DELETE /api/cell-types/{cellTypeId}
 POST /api/props

@@ -28,10 +28,7 @@ export function calendarLinkRoutes(app: FastifyInstance, deps: Deps, publicUrl: 
     async (request, reply) => {
       const { link, secret } = makeCalendarLink(deps, { ...request.body, siteId: request.params.siteId });
       const base = publicUrl ?? `http://${request.headers.host}`;
-      return reply
-        .code(201)
-        .header('location', `/api/sites/${link.siteId}/calendar-links/${link.id}`)
-        .send({ id: link.id, url: `${base}/calendars/${secret}.ics` });
+      return reply.code(201).send({ id: link.id, url: `${base}/calendars/${secret}.ics` });
     },
   );
 

@@ -3,6 +3,7 @@ import { Type } from 'typebox';
 import { addCellType } from '../../actions/add-cell-type.ts';
 import { changeCellType } from '../../actions/change-cell-type.ts';
 import type { Deps } from '../../actions/deps.ts';
+import { cellTypeOf } from '../../actions/find-cell-type.ts';
 import { listCellTypes } from '../../actions/list-cell-types.ts';
 import { removeCellType } from '../../actions/remove-cell-type.ts';
 import { NoContent, ref } from '../responses.ts';
@@ -37,6 +38,18 @@ export function cellTypeRoutes(app: FastifyInstance, deps: Deps): void {
       const type = addCellType(deps, request.body);
       return reply.code(201).header('location', `/api/cell-types/${type.id}`).send(type);
     },
+  );
+
+  app.get<OfCellType>(
+    '/api/cell-types/:cellTypeId',
+    {
+      schema: {
+        operationId: 'getCellType',
+        summary: 'One cell type, built in or your own',
+        response: { 200: ref(CellType) },
+      },
+    },
+    async (request) => cellTypeOf(deps, request.params.cellTypeId),
   );
 
   app.patch<OfCellType & { Body: CellTypeChanges }>(
