@@ -13,6 +13,7 @@ import type {
   Prop,
   PropChanges,
   PropForecast,
+  PropsImported,
   ShowNight,
   Sighting,
   Site,
@@ -121,6 +122,11 @@ export const api = {
   props: (siteId: string) => request<Prop[]>('GET', '/props', { query: { siteId } }),
   prop: (propId: string) => request<Prop>('GET', `/props/${propId}`),
   addProp: (prop: NewProp) => request<Prop>('POST', '/props', { json: prop }),
+  importProps: (siteId: string, rows: Blob, { dryRun }: { dryRun: boolean }) =>
+    request<PropsImported>('POST', `/sites/${siteId}/props/import`, {
+      csv: rows,
+      query: { dryRun: String(dryRun) },
+    }),
   changeProp: (propId: string, changes: PropChanges) =>
     request<Prop>('PATCH', `/props/${propId}`, { json: changes }),
   forecast: (propId: string, asOf: AsOf) =>

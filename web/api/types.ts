@@ -1,6 +1,7 @@
 // The server's schemas are the one source of these types; nothing but types comes across.
 export type { CalendarLink, MadeCalendarLink } from '../../server/http/schemas/calendar-links.ts';
 export type { CellType } from '../../server/http/schemas/cell-types.ts';
+export type { PropsImported } from '../../server/http/schemas/csv.ts';
 export type { FieldFault, Problem } from '../../server/http/schemas/errors.ts';
 export type {
   EveningRange,

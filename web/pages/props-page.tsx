@@ -5,11 +5,12 @@ import { ChoiceField, TextField } from '../parts/field.tsx';
 import { Link } from '../parts/link.tsx';
 import { Status, Trouble, Waiting } from '../parts/notice.tsx';
 import { PageHead } from '../parts/page-head.tsx';
-import { useRead } from '../state/read.ts';
+import { forgetAnswers, useRead } from '../state/read.ts';
 import { useShell } from '../state/shell.tsx';
 import { GROUP_WORDS } from '../words/names.ts';
 import { counted } from '../words/quantity.ts';
 import { PropRow, WickKey } from './prop-row.tsx';
+import { PropsFiles } from './props-files.tsx';
 
 type Order = 'tag' | 'swap';
 
@@ -21,6 +22,10 @@ export function PropsPage({ site }: { site: Site }) {
   const [order, setOrder] = useState<Order>('tag');
   const props = forecast.value?.props ?? [];
   const shown = props.filter((prop) => isWanted(prop, wanted));
+  const readAgain = () => {
+    forgetAnswers();
+    void forecast.again();
+  };
 
   return (
     <div class="props" aria-busy={forecast.loading}>
@@ -29,6 +34,10 @@ export function PropsPage({ site }: { site: Site }) {
           Add a prop
         </Link>
       </PageHead>
+      <details>
+        <summary>In and out of spreadsheets</summary>
+        <PropsFiles site={site} onImported={readAgain} />
+      </details>
       {forecast.problem && <Trouble problem={forecast.problem} onAgain={() => void forecast.again()} />}
       {!forecast.value && !forecast.problem && <Waiting what="the props" />}
       {props.length > 0 && (
