@@ -4,7 +4,7 @@ import { type CellRemark, type PropsFile, readPropsCsv } from '../exchange/read-
 import type { CellType } from '../model/cell-type.ts';
 import type { Prop } from '../model/prop.ts';
 import type { Db } from '../store/open.ts';
-import { insertProp, listProps, updateProp } from '../store/props.ts';
+import { listProps, saveProps } from '../store/props.ts';
 import { raiseRevision } from '../store/sites.ts';
 import { MOST_PROPS, type NewProp, tidyProp } from './add-prop.ts';
 import { propFaults } from './check-prop.ts';
@@ -221,10 +221,10 @@ function crossFaults(scale: Scale, prop: Prop): Fault[] {
 
 function keep(deps: Deps, db: Db, of: { siteId: string; taken: Taken[] }): void {
   const different = of.taken.filter(({ fields }) => fields.length > 0);
-  for (const { prop, before } of different) {
-    if (before) updateProp(db, prop);
-    else insertProp(db, prop);
-  }
+  saveProps(
+    db,
+    different.map(({ prop }) => prop),
+  );
   if (different.length > 0) raiseRevision(db, of.siteId, deps.clock.now());
 }
 

@@ -1,4 +1,5 @@
 import { and, asc, count, eq, getTableColumns, sql } from 'drizzle-orm';
+import { toSnakeCase } from 'drizzle-orm/casing';
 import type { Prop } from '../model/prop.ts';
 import type { Db } from './open.ts';
 import { preparedOnce, present } from './rows.ts';
@@ -42,6 +43,28 @@ const statements = preparedOnce((db) => {
 /** Keeps a new prop. Throws SqliteError when its id or its tag on the site is taken or a value is out of bounds. */
 export function insertProp(db: Db, prop: Prop): void {
   db.insert(props).values(rowOf(prop)).run();
+}
+
+/** Each column as the row that came in has it. */
+const AS_GIVEN = Object.fromEntries(
+  Object.keys(getTableColumns(props)).map((field) => [
+    field,
+    sql`excluded.${sql.identifier(toSnakeCase(field))}`,
+  ]),
+);
+
+/** Rows a statement takes at once: many enough to share its cost, few enough for SQLite's count of values. */
+const ROWS_AT_ONCE = 200;
+
+/**
+ * Keeps many props at once, new ones and ones that are here with every field replaced. Throws SqliteError as
+ * `insertProp` does; only a transaction makes it all or nothing.
+ */
+export function saveProps(db: Db, saved: readonly Prop[]): void {
+  for (let from = 0; from < saved.length; from += ROWS_AT_ONCE) {
+    const rows = saved.slice(from, from + ROWS_AT_ONCE).map(rowOf);
+    db.insert(props).values(rows).onConflictDoUpdate({ target: props.id, set: AS_GIVEN }).run();
+  }
 }
 
 /** The prop, or null. */

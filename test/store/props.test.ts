@@ -9,6 +9,7 @@ import {
   insertProp,
   listProps,
   removeProp,
+  saveProps,
   updateProp,
 } from '../../server/store/props.ts';
 import { insertSite } from '../../server/store/sites.ts';
@@ -118,6 +119,24 @@ const anyProp: fc.Arbitrary<Prop> = record(
     'switching',
   ],
 );
+
+test('many props are kept at once: new ones added, known ones replaced whole, and their logs stay', () => {
+  const { db, close } = storeWithSamples();
+  insertEntry(db, sampleSwap);
+  fc.assert(
+    fc.property(anyProp, (changed) => {
+      const known = { ...changed, id: sampleProp.id };
+      const others = Array.from({ length: 401 }, (_, n) => ({ ...sampleProp, id: `n${n}`, tag: `New-${n}` }));
+      saveProps(db, [known, ...others.filter(({ tag }) => tag !== known.tag)]);
+      expect(findProp(db, known.id)).toStrictEqual(known);
+      expect(countProps(db, sampleProp.siteId)).toBe(402);
+      expect(findEntry(db, sampleSwap.id)).toMatchObject({ propId: sampleProp.id });
+    }),
+    { numRuns: 20 },
+  );
+  expect(findProp(db, 'n400')).toStrictEqual({ ...sampleProp, id: 'n400', tag: 'New-400' });
+  close();
+});
 
 test('any prop comes back as it went in, and as any other it was changed to', () => {
   const { db, close } = storeWithSamples();
