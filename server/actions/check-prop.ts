@@ -17,7 +17,12 @@ const FRESH_OVER_NOMINAL = 1.2;
  * @param cellType the cells it usually has
  */
 export function propFaults(prop: Prop, cellType: CellType): Fault[] {
-  return [...voltsFaults(prop, cellType), ...loadFaults(prop), ...switchingFaults(prop.switching)];
+  return [
+    ...voltsFaults(prop, cellType),
+    ...ledFaults(prop, cellType),
+    ...loadFaults(prop),
+    ...switchingFaults(prop.switching),
+  ];
 }
 
 function voltsFaults(prop: Prop, cellType: CellType): Fault[] {
@@ -35,16 +40,29 @@ function voltsFaults(prop: Prop, cellType: CellType): Fault[] {
   return faults;
 }
 
+function ledFaults({ load, series }: Prop, cellType: CellType): Fault[] {
+  const { behaviour, ledVolts, measuredVolts } = load;
+  if (behaviour !== 'fades' || ledVolts === undefined) return [];
+  const freshVolts = freshSetVolts(series, cellType);
+  if (ledVolts < (measuredVolts ?? freshVolts)) return [];
+  const message =
+    measuredVolts === undefined
+      ? `LEDs that stop at ${ledVolts} V would never be lit: ${series} × ${cellType.id} end to end is about ${freshVolts.toFixed(1)} V at most. Is this the volts of the whole set?`
+      : `LEDs that stop at ${ledVolts} V could not have been lit at ${measuredVolts} V, where the draw was measured. Are the two swapped?`;
+  return [{ field: 'load.ledVolts', message }];
+}
+
 function freshSetVolts(series: number, cellType: CellType): number {
   const byCurve = (CELL_KINDS[cellType.kind].curve.volts[0] ?? 0) * cellType.cellsInside * FRESH_MARGIN;
   return series * Math.max(byCurve, cellType.nominalVolts * FRESH_OVER_NOMINAL);
 }
 
-function loadFaults({ load, trips }: Prop): Fault[] {
-  const faults = waveFaults(load);
-  const draws = (load.meanMa ?? 0) > 0 || (load.peakMa ?? 0) > 0 || trips !== undefined;
-  faults.push(...meanFaults(load), ...tripFaults(trips));
-  if (!draws) {
+function loadFaults({ load, switching, trips }: Prop): Fault[] {
+  const faults = [...waveFaults(load), ...meanFaults(load), ...tripFaults(trips)];
+  // What is switched by hand may wait all night and never be lit; anything else is lit by itself.
+  const waits = switching.kind === 'by-hand' && load.standbyMa > 0;
+  const isTripped = trips !== undefined && trips.perShowNight + trips.perNightOff > 0;
+  if (!waits && !isTripped && (load.meanMa ?? load.peakMa ?? 0) === 0) {
     const message =
       "Nothing says what this takes. Give meanMa, the meter's average with the light on, or lowMa, peakMa and wave for a light that fades or blinks, or trips for one that visitors set off.";
     faults.push({ field: 'load.meanMa', message });
@@ -52,24 +70,15 @@ function loadFaults({ load, trips }: Prop): Fault[] {
   return faults;
 }
 
-function meanFaults({ behaviour, meanMa, lowMa, peakMa, ledVolts, measuredVolts }: Load): Fault[] {
+function meanFaults({ meanMa, lowMa, peakMa }: Load): Fault[] {
   const faults: Fault[] = [];
   if (meanMa !== undefined && peakMa !== undefined && meanMa > peakMa) {
     const message = `meanMa ${meanMa} is above peakMa ${peakMa}, and an average cannot be above the highest. Were the two swapped?`;
     faults.push({ field: 'load.meanMa', message });
   }
-  if (meanMa !== undefined && lowMa !== undefined && meanMa > 0 && meanMa < lowMa) {
+  if (meanMa !== undefined && lowMa !== undefined && meanMa < lowMa) {
     const message = `meanMa ${meanMa} is below lowMa ${lowMa}, and an average cannot be below the lowest. Were the two swapped?`;
     faults.push({ field: 'load.meanMa', message });
-  }
-  if (
-    behaviour === 'fades' &&
-    ledVolts !== undefined &&
-    measuredVolts !== undefined &&
-    ledVolts >= measuredVolts
-  ) {
-    const message = `LEDs that stop at ${ledVolts} V could not have been lit at ${measuredVolts} V, where the draw was measured. Are the two swapped?`;
-    faults.push({ field: 'load.ledVolts', message });
   }
   return faults;
 }

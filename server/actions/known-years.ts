@@ -1,11 +1,6 @@
 import { type Instant, isEvening } from '../model/evening.ts';
+import { AFTER_KNOWN_AT, FIRST_KNOWN_AT, FIRST_KNOWN_YEAR, LAST_KNOWN_YEAR } from '../model/known-years.ts';
 import type { Fault } from './refusal.ts';
-
-// The model knows 1900 to 2199; keeping well inside, the evening before and the sunrise after are always known too.
-const FIRST_YEAR = 2000;
-const LAST_YEAR = 2150;
-const FIRST_AT = Date.UTC(FIRST_YEAR, 0, 1);
-const AFTER_LAST_AT = Date.UTC(LAST_YEAR + 1, 0, 1);
 
 /**
  * Says when a text is no evening one can ask about.
@@ -14,8 +9,8 @@ const AFTER_LAST_AT = Date.UTC(LAST_YEAR + 1, 0, 1);
  */
 export function eveningFaults(evening: string, field: string): Fault[] {
   const year = Number(evening.slice(0, 4));
-  if (isEvening(evening) && year >= FIRST_YEAR && year <= LAST_YEAR) return [];
-  const message = `${JSON.stringify(evening.slice(0, 20))} is no date of the calendar between ${FIRST_YEAR} and ${LAST_YEAR}. Dates are written year, month, day: '2026-10-25'.`;
+  if (isEvening(evening) && year >= FIRST_KNOWN_YEAR && year <= LAST_KNOWN_YEAR) return [];
+  const message = `${JSON.stringify(evening.slice(0, 20))} is no date of the calendar between ${FIRST_KNOWN_YEAR} and ${LAST_KNOWN_YEAR}. Dates are written year, month, day: '2026-10-25'.`;
   return [{ field, message }];
 }
 
@@ -25,8 +20,9 @@ export function eveningFaults(evening: string, field: string): Fault[] {
  * @param field how the asker calls it
  */
 export function yearFaults(at: Instant, field: string): Fault[] {
-  if (at >= FIRST_AT && at < AFTER_LAST_AT) return [];
-  const side = at < FIRST_AT ? `before the year ${FIRST_YEAR}` : `after the year ${LAST_YEAR}`;
+  if (at >= FIRST_KNOWN_AT && at < AFTER_KNOWN_AT) return [];
+  const side =
+    at < FIRST_KNOWN_AT ? `before the year ${FIRST_KNOWN_YEAR}` : `after the year ${LAST_KNOWN_YEAR}`;
   const message = `This moment is ${side}. Is the year right, and the clock of the phone or computer set?`;
   return [{ field, message }];
 }

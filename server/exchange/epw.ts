@@ -19,11 +19,11 @@ const LEAST_MISSING_C = 99.9;
  * @param lines of the file, line ends removed; text read as latin-1 or UTF-8 alike
  * @throws WeatherFileError when the header or a tenth of the year is missing
  */
-export function readEpw(lines: readonly string[], onProgress: (share: number) => void): TypicalYearFile {
+export function readEpw(lines: readonly string[]): TypicalYearFile {
   const { station, standardOffsetHours } = readLocation(lines[0]!);
   const { firstRow, rowsPerHour } = readDataPeriods(lines);
   const readRow = (line: string) => epwRow(line, rowsPerHour);
-  return gatherTypicalYear(lines, { firstRow, station, standardOffsetHours, readRow, onProgress });
+  return gatherTypicalYear(lines, { firstRow, station, standardOffsetHours, readRow });
 }
 
 function readLocation(line: string): { station: Station; standardOffsetHours: number } {

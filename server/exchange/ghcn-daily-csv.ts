@@ -5,8 +5,10 @@ import {
   eveningsFrom,
   HOUR_MS,
   isEvening,
+  latestOf,
   localNoonAt,
 } from '../model/evening.ts';
+import { FIRST_KNOWN_YEAR, LAST_KNOWN_YEAR } from '../model/known-years.ts';
 import type { ObservedHours } from '../model/weather.ts';
 import { csvFields, numberOrNaN } from './csv-fields.ts';
 import { type DailyUnit, dailyUnitOf, toC } from './daily-unit.ts';
@@ -30,7 +32,6 @@ type GhcnDailySite = {
   latitudeDeg: number;
   longitudeDeg: number;
   unit?: 'C' | 'F';
-  onProgress: (share: number) => void;
 };
 
 /** An extreme as written, in the file's own unit, and the day it belongs to. */
@@ -65,7 +66,8 @@ function columnNames(fields: readonly string[]): string[] {
  * day is the station's local one. A value with a quality flag (the second attribute) is left out. Where the fourth
  * attribute says that the high was read before noon it belongs to the day before. Each day's mid and range stand at
  * its local noon, with straight lines between noons, and the hours follow `dayTemperatureC`; so a day that is missing
- * takes the evening before it and its own along. Days more than 20 years older than the last are left out.
+ * takes the evening before it and its own along. Days more than 20 years older than the last, or before
+ * 2000, are left out.
  * Source: the data set's own documentation of columns, units and flags; the attribute with the time from memory of it.
  * @param lines of the file, line ends removed
  * @param site IANA zone of the local days; position that stands in where the file has none; unit of daily summaries,
@@ -77,7 +79,7 @@ export function readGhcnDailyCsv(lines: readonly string[], site: GhcnDailySite):
   const names = columnNames(lines[first]!.split(','));
   checkColumns(names);
   const rejected = new RejectedLines();
-  const { station, written } = readRows(lines, { first, names, rejected, onProgress: site.onProgress });
+  const { station, written } = readRows(lines, { first, names, rejected });
   checkNotEmpty(written, rejected);
   const { unit, warnings } = dailyUnitOf(
     written.lows.map(({ value }) => value),
@@ -122,10 +124,9 @@ function readRows(
     first: number;
     names: readonly string[];
     rejected: RejectedLines;
-    onProgress: (share: number) => void;
   },
 ): { station: Station | null; written: Written } {
-  const { first, names, rejected, onProgress } = options;
+  const { first, names, rejected } = options;
   const [dateColumn, stationColumn] = [names.indexOf('DATE'), names.indexOf('STATION')];
   const usedColumns = 1 + Math.max(...USED_NAMES.map((name) => names.indexOf(name)));
   const readLow = extremeReader(names, 'TMIN');
@@ -133,7 +134,6 @@ function readRows(
   const written: Written = { lows: [], highs: [] };
   let stationRow: string[] | null = null;
   for (let index = first + 1; index < lines.length; index++) {
-    if (index % 5000 === 0) onProgress(index / lines.length);
     const line = lines[index]!;
     if (line.trim() === '') continue;
     const row = csvFields(line, usedColumns);
@@ -150,8 +150,11 @@ function readRows(
       );
     }
     const date = row[dateColumn]?.trim() ?? '';
-    if (!isEvening(date)) {
-      rejected.add(index + 1, `"${date.slice(0, 40)}" is not a day from 1900 on, written like 2026-10-25.`);
+    if (!isEvening(date) || Number(date.slice(0, 4)) > LAST_KNOWN_YEAR) {
+      rejected.add(
+        index + 1,
+        `"${date.slice(0, 40)}" is not a day from 1900 to ${LAST_KNOWN_YEAR}, written like 2026-10-25.`,
+      );
       continue;
     }
     const at = { date, line: index + 1 };
@@ -204,7 +207,10 @@ function daysOf(
   const lowsC = byDate(lows, { name: 'TMIN', unit, rejected });
   const highsC = byDate(highs, { name: 'TMAX', unit, rejected });
   const newest = [...lowsC.keys()].reduce((one, other) => (other > one ? other : one), '');
-  const oldest = newest === '' ? '' : `${Number(newest.slice(0, 4)) - LONGEST_YEARS}${newest.slice(4)}`;
+  const oldest = latestOf(
+    newest === '' ? '' : `${Number(newest.slice(0, 4)) - LONGEST_YEARS}${newest.slice(4)}`,
+    `${FIRST_KNOWN_YEAR - 1}-12-31`,
+  );
   const days = new Map<Evening, Day>();
   let older = 0;
   for (const [date, low] of lowsC) {
@@ -219,6 +225,12 @@ function daysOf(
     } else {
       days.set(date, { minC: low.tempC, maxC: high.tempC });
     }
+  }
+  if (days.size === 0 && older > 0) {
+    throw new WeatherFileError(
+      `All ${older} days lie before ${FIRST_KNOWN_YEAR}, too long ago to say anything of a season to come. ` +
+        'Likely a station that measures no more: choose one that still does.',
+    );
   }
   return { days, older };
 }
@@ -293,7 +305,9 @@ function daysWarnings(
     );
   }
   if (older > 0)
-    warnings.push(`${older} days before ${from} were left out: the last ${LONGEST_YEARS} years are kept.`);
+    warnings.push(
+      `${older} days before ${from} were left out: of the last ${LONGEST_YEARS} years those since ${FIRST_KNOWN_YEAR} are kept.`,
+    );
   return warnings;
 }
 

@@ -1,4 +1,5 @@
 import { HOUR_MS } from '../model/evening.ts';
+import { AFTER_KNOWN_AT, FIRST_KNOWN_AT, FIRST_KNOWN_YEAR, LAST_KNOWN_YEAR } from '../model/known-years.ts';
 import type { ObservedHours } from '../model/weather.ts';
 import type { Reading } from './time-temp-csv.ts';
 import { type RejectedLines, WeatherFileError } from './weather-file-error.ts';
@@ -53,18 +54,16 @@ export function hoursOfReadings(
   return { hours: wholeHours(kept), kept, warnings };
 }
 
-/** Nobody lights a display before or after: further off, a date is a slip. */
-const FIRST_AT = Date.UTC(2000, 0, 1);
-const AFTER_LAST_AT = Date.UTC(2151, 0, 1);
+const UNKNOWN_YEAR = `is dated outside the years known here, ${FIRST_KNOWN_YEAR} to ${LAST_KNOWN_YEAR}. Is the year right?`;
 
 function withoutUnknownYears(readings: readonly Reading[], rejected: RejectedLines): Reading[] {
   const known = readings.filter(({ at, line }) => {
-    if (at >= FIRST_AT && at < AFTER_LAST_AT) return true;
-    rejected.add(line, 'This line is dated outside 2000 to 2150. Is the year right?');
+    if (at >= FIRST_KNOWN_AT && at < AFTER_KNOWN_AT) return true;
+    rejected.add(line, `This line ${UNKNOWN_YEAR}`);
     return false;
   });
   if (known.length > 0) return known;
-  throw new WeatherFileError('Every line is dated outside 2000 to 2150. Is the year right?');
+  throw new WeatherFileError(`Every line ${UNKNOWN_YEAR}`);
 }
 
 type Notes = { rejected: RejectedLines; warnings: string[] };

@@ -108,9 +108,9 @@ function plainName(name: string): string {
  */
 export function readTimeTempRows(
   text: string,
-  options: { header: TimeTempHeader; timeZone: string; unit: 'C' | 'F'; onProgress: (share: number) => void },
+  options: { header: TimeTempHeader; timeZone: string; unit: 'C' | 'F' },
 ): TimeTempRows {
-  const { header, timeZone, unit, onProgress } = options;
+  const { header, timeZone, unit } = options;
   const { data, errors } = Papa.parse<string[]>(text, { delimiter: header.delimiter });
   const quote = errors.find((error) => error.type === 'Quotes');
   if (quote) {
@@ -130,9 +130,9 @@ export function readTimeTempRows(
   let hotRows = 0;
   const clock = { timeZone, isUtc: header.isUtc, lastAt: Number.NEGATIVE_INFINITY };
   let localTimes = 0;
+  let withoutTempC = 0;
   let skippedTimes = 0;
   for (let index = header.line; index < data.length; index++) {
-    if (index % 5000 === 0) onProgress(index / data.length);
     const row = data[index]!;
     if (row.length === 1 && row[0]!.trim() === '') continue;
     const value = writtenValue(row, header);
@@ -154,9 +154,16 @@ export function readTimeTempRows(
     }
     clock.lastAt = time.at;
     if (time.isLocal) localTimes++;
-    if (!Number.isNaN(tempC)) readings.push({ at: time.at, tempC, line: index + 1 });
+    if (Number.isNaN(tempC)) withoutTempC++;
+    else readings.push({ at: time.at, tempC, line: index + 1 });
   }
-  return { readings, hotRows, rejected, warnings: clockWarnings({ localTimes, skippedTimes, timeZone }) };
+  const warnings = clockWarnings({ localTimes, skippedTimes, timeZone });
+  if (withoutTempC > 0) warnings.push(missingWarning(withoutTempC));
+  return { readings, hotRows, rejected, warnings };
+}
+
+function missingWarning(lines: number): string {
+  return `${lines === 1 ? '1 line has' : `${lines} lines have`} no temperature; the hours around stand in.`;
 }
 
 function clockWarnings(found: { localTimes: number; skippedTimes: number; timeZone: string }): string[] {

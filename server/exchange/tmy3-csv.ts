@@ -28,7 +28,7 @@ export function isTmy3Csv(lines: readonly string[]): boolean {
  * @param lines of the file, line ends removed
  * @throws WeatherFileError when the header or a tenth of the year is missing
  */
-export function readTmy3Csv(lines: readonly string[], onProgress: (share: number) => void): TypicalYearFile {
+export function readTmy3Csv(lines: readonly string[]): TypicalYearFile {
   const { station, standardOffsetHours } = readStation(lines[0]!);
   const tempColumn = lines[1]!.split(',').findIndex((name) => unquoted(name).toLowerCase() === TEMP_NAME);
   if (tempColumn < 2) {
@@ -43,7 +43,6 @@ export function readTmy3Csv(lines: readonly string[], onProgress: (share: number
     station,
     standardOffsetHours,
     readRow,
-    onProgress,
   });
 }
 

@@ -37,7 +37,7 @@ const LONGEST_GAP_HOURS = 14 * 24;
  * @param lines of the file
  * @param options.firstRow index of the first line that is a row
  * @param options.readRow the row, or why it is rejected
- * @throws WeatherFileError when a tenth of the year or two weeks in a row are missing
+ * @throws WeatherFileError when a tenth of the year or two weeks in a row are missing, or one hour of the day all season
  */
 export function gatherTypicalYear(
   lines: readonly string[],
@@ -46,10 +46,9 @@ export function gatherTypicalYear(
     station: Station;
     standardOffsetHours: number;
     readRow: (line: string) => TypicalYearRow | string;
-    onProgress: (share: number) => void;
   },
 ): TypicalYearFile {
-  const { firstRow, station, standardOffsetHours, readRow, onProgress } = options;
+  const { firstRow, station, standardOffsetHours, readRow } = options;
   const rejected = new RejectedLines();
   const tempC = new Float32Array(YEAR_HOURS).fill(Number.NaN);
   const years = new Set<string>();
@@ -57,7 +56,6 @@ export function gatherTypicalYear(
   let rows = 0;
   let missing = 0;
   for (let index = firstRow; index < lines.length; index++) {
-    if (index % 2000 === 0) onProgress(index / lines.length);
     const line = lines[index]!;
     if (line.trim() === '') continue;
     const row = readRow(line);
@@ -77,8 +75,8 @@ export function gatherTypicalYear(
     tempC[row.hourOfYear] = row.tempC;
   }
   checkComplete(tempC, rows);
-  checkEveryHour(tempC);
   fillShortGaps(tempC);
+  checkEveryHour(tempC);
   const warnings: string[] = [];
   if (missing > 0)
     warnings.push(`${missing} hours have no temperature; the hours and days around them stand in.`);

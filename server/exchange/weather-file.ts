@@ -41,8 +41,6 @@ export type WeatherFileSite = {
   longitudeDeg: number;
   /** What the temperatures are in where the file does not say; asked for when they look like °F. */
   unit?: 'C' | 'F';
-  /** Called now and then with the share done, 0..1. */
-  onProgress?: (share: number) => void;
 };
 
 const LONGEST_LINE = 20_000;
@@ -105,7 +103,7 @@ function typicalYearFile(
   { lines, site }: { lines: readonly string[]; site: WeatherFileSite },
 ): WeatherFile {
   const read = format === 'epw' ? readEpw : readTmy3Csv;
-  const { station, typicalYear, rows, rejected, warnings } = read(lines, site.onProgress ?? ignore);
+  const { station, typicalYear, rows, rejected, warnings } = read(lines);
   const offsetHours = typicalYear.standardOffsetHours;
   const phase = phaseWarning(
     { startAt: -offsetHours * HOUR_MS, tempC: typicalYear.tempC },
@@ -131,10 +129,7 @@ function typicalYearFile(
 }
 
 function ghcnDailyFile(lines: readonly string[], site: WeatherFileSite): WeatherFile {
-  const { station, hours, rows, rejected, warnings, from, through } = readGhcnDailyCsv(lines, {
-    ...site,
-    onProgress: site.onProgress ?? ignore,
-  });
+  const { station, hours, rows, rejected, warnings, from, through } = readGhcnDailyCsv(lines, site);
   return {
     format: 'ghcn-daily',
     rows,
@@ -152,13 +147,12 @@ function timeTempFile(
   text: string,
   { header, site }: { header: TimeTempHeader; site: WeatherFileSite },
 ): WeatherFile {
-  const { timeZone, longitudeDeg, onProgress = ignore } = site;
+  const { timeZone, longitudeDeg } = site;
   const unit = site.unit ?? header.unit ?? 'C';
   const { readings, hotRows, rejected, warnings } = readTimeTempRows(text, {
     header,
     timeZone,
     unit,
-    onProgress,
   });
   if (site.unit === undefined && header.unit === null) refuseFahrenheit(readings, hotRows);
   if (readings.length === 0) throw new WeatherFileError(nothingReadable(rejected));
@@ -219,5 +213,3 @@ function localDate(at: Instant, timeZone: string): string {
 function present(warning: string | null): string[] {
   return warning === null ? [] : [warning];
 }
-
-function ignore(): void {}

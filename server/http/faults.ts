@@ -2,6 +2,7 @@ import type { TSchema } from 'typebox';
 import type { TLocalizedValidationError } from 'typebox/error';
 import { didYouMean, nearNames } from '../actions/near-names.ts';
 import type { Fault } from '../actions/refusal.ts';
+import { FIRST_KNOWN_YEAR, LAST_KNOWN_YEAR } from '../model/known-years.ts';
 
 export const MOST_FAULTS = 100;
 
@@ -74,6 +75,10 @@ function sentences(error: TLocalizedValidationError, context: Context): Fault[] 
 const WITHOUT_OFFSET = /^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}(:\d{2}(\.\d+)?)?$/;
 
 function formatReason(value: unknown, format: string): string {
+  const year = /^(\d{4})-\d{2}-\d{2}/.exec(String(value))?.[1];
+  if (year !== undefined && (Number(year) < FIRST_KNOWN_YEAR || Number(year) > LAST_KNOWN_YEAR)) {
+    return `${show(value)} lies outside the years known here, ${FIRST_KNOWN_YEAR} to ${LAST_KNOWN_YEAR}.`;
+  }
   if (format !== 'date' && WITHOUT_OFFSET.test(String(value))) {
     return `${show(value)} does not say in which zone: put Z or an offset like +01:00 behind it.`;
   }

@@ -57,6 +57,17 @@ describe('what cannot be is refused, what is only unlikely passes', () => {
     expect(fieldsOf({ load: { ...nothing, lowMa: 2, peakMa: 40, meanMa: 20 } })).toEqual([]);
   });
 
+  test('what waits for a hand may draw next to nothing; what lights by itself, and trips that never come, may not', () => {
+    const waiting = { behaviour: 'steady', standbyMa: 0.05 } as const;
+    expect(fieldsOf({ load: waiting, switching: { kind: 'by-hand' } })).toEqual([]);
+    expect(fieldsOf({ load: waiting, switching: { kind: 'always' } })).toEqual(['load.meanMa']);
+    const nothing = { ...waiting, standbyMa: 0 };
+    expect(fieldsOf({ load: nothing, switching: { kind: 'by-hand' } })).toEqual(['load.meanMa']);
+    const trips = { perShowNight: 0, perNightOff: 0, seconds: 10, runMa: 60 };
+    expect(fieldsOf({ load: nothing, trips })).toEqual(['load.meanMa']);
+    expect(fieldsOf({ load: { ...nothing, meanMa: 0, peakMa: 40 } })).toEqual(['load.meanMa']);
+  });
+
   test('numbers that contradict each other are told', () => {
     const load = { behaviour: 'steady', standbyMa: 0 } as const;
     expect(fieldsOf({ load: { ...load, meanMa: 50, peakMa: 40 } })).toEqual(['load.meanMa']);
@@ -64,6 +75,10 @@ describe('what cannot be is refused, what is only unlikely passes', () => {
     const led = { behaviour: 'fades', standbyMa: 0, meanMa: 20, measuredVolts: 4.5 } as const;
     expect(fieldsOf({ load: { ...led, ledVolts: 6 } })).toEqual(['load.ledVolts']);
     expect(fieldsOf({ load: { ...led, ledVolts: 2.9 } })).toEqual([]);
+    // Three fresh alkaline cells end to end stay below 5.2 V.
+    const { measuredVolts: _, ...unmeasured } = led;
+    expect(fieldsOf({ load: { ...unmeasured, ledVolts: 6 } })).toEqual(['load.ledVolts']);
+    expect(fieldsOf({ load: { ...unmeasured, ledVolts: 2.9 } })).toEqual([]);
     const trips = { perShowNight: 9000, perNightOff: 0, seconds: 60, runMa: 60 };
     expect(fieldsOf({ load, trips })).toEqual(['trips.perShowNight']);
   });

@@ -238,4 +238,21 @@ describe('daily summaries in other units', () => {
     expect(file.hours).toEqual(read(ghcn(COLD)).hours);
     expect(file.warnings.join(' ')).toMatch(/unit=F was not followed/);
   });
+
+  test('takes nothing from before 2000, nor from after 2150', () => {
+    const old = [
+      { date: '1999-12-30', max: 10, min: -10 },
+      { date: '1999-12-31', max: 10, min: -200 },
+    ];
+    expect(refusal(ghcn(old.map((day) => ({ ...day, date: day.date.replace('1999', '1900') }))))).toMatch(
+      /before 2000.*choose one/,
+    );
+    const file = read(
+      ghcn([...old, ...COLD.map((day) => ({ ...day, date: day.date.replace('2024', '2001') }))]),
+    );
+    expect([file.rows, file.from]).toEqual([3, '2001-01-14']);
+    expect(file.warnings.join(' ')).toMatch(/2 days before 2001-01-14 were left out/);
+    const late = read(ghcn([...COLD, { date: '2151-01-01', max: 10, min: -200 }]));
+    expect(late.rejected).toEqual([{ line: 5, message: expect.stringContaining('2150') }]);
+  });
 });

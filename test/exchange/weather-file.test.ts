@@ -109,6 +109,12 @@ describe('an EPW file', () => {
   test('that lacks the same hours for weeks is refused, however full it is otherwise', () => {
     const lines = epw({ temp: (m, _d, h) => (m <= 2 && h <= 5 ? '99.9' : '5.0') });
     expect(refusal(lines.join('\n'))).toMatch(/Hour [1-5] has no temperature for over six weeks/);
+    // Three hours a night are bridged, for however long.
+    const bridged = readWeatherFile(
+      epw({ temp: (m, _d, h) => (m <= 2 && h <= 3 ? '99.9' : '5.0') }).join('\n'),
+      berlin,
+    );
+    expect(bridged.typicalYear!.tempC[1]).toBe(5);
   });
 
   test('rejects by line what is no temperature, no hour or no day', () => {
@@ -332,13 +338,11 @@ describe('a time,temp CSV', () => {
     expect(refusal(lines.slice(0, 2).join('\n'))).toMatch(/2000 to 2150/);
   });
 
-  test('tells how far it is', () => {
-    const shares: number[] = [];
-    const lines = sunnyLines({ from: '2024-01-01T00:00Z', days: 500, longitudeDeg: 13.4 });
-    read(['time,temp', ...lines], { onProgress: (share) => shares.push(share) });
-    expect(shares.length).toBeGreaterThan(1);
-    expect(shares).toEqual([...shares].sort((one, other) => one - other));
-    expect(shares.every((share) => share >= 0 && share <= 1)).toBe(true);
+  test('counts the lines that have a time and no temperature', () => {
+    const lines = ['time,temp', '2026-10-25T00:00Z,4', '2026-10-25T01:00Z,', '2026-10-25T02:00Z,NaN'];
+    const file = read([...lines, '2026-10-25T03:00Z,5']);
+    expect(file).toMatchObject({ rows: 2, rejected: [] });
+    expect(file.warnings.join(' ')).toMatch(/2 lines have no temperature/);
   });
 });
 

@@ -49,6 +49,12 @@ const SITES: Row[] = [
     'seasonFrom',
     '"2026-02-30" does not exist',
   ],
+  [
+    'a year nobody can know',
+    { ...A_SITE, seasonFrom: '2300-10-01' },
+    'seasonFrom',
+    '"2300-10-01" lies outside the years known here, 2000 to 2150',
+  ],
   ['a date written otherwise', { ...A_SITE, seasonFrom: '01.10.2026' }, 'seasonFrom', "like '2026-10-25'"],
   [
     'the ends of the season swapped',
@@ -137,10 +143,10 @@ const PROPS: Row[] = [
   ],
   ['no draw', { load: { behaviour: 'steady', standbyMa: 0 } }, 'load.meanMa', 'meter'],
   [
-    'a peak alone',
-    { load: { behaviour: 'fades', standbyMa: 0, peakMa: 40 } },
-    'load.lowMa',
-    'lowMa is missing',
+    'a low alone',
+    { load: { behaviour: 'fades', standbyMa: 0, lowMa: 4 } },
+    'load.peakMa',
+    'lowMa 4 alone makes no average',
   ],
   ['peak below low', { load: { ...load, lowMa: 9, peakMa: 4 } }, 'load.peakMa', 'peakMa 4 is below lowMa 9'],
   ['A for mA', { load: { ...load, meanMa: 22_000 } }, 'load.meanMa', '22000 is above 20000…22 mA'],
