@@ -56,8 +56,8 @@ export function PropSum({ forecast, prop, tonight, timeZone }: PropSumProps) {
           {why.leftAtStartShare < 1 && `, with ${percent(1 - why.leftAtStartShare)} gone from it before`}
         </Step>
         <Step title="It drains at" result={`${drainFactor.likely.toFixed(2)} × the sum`}>
-          between {drainFactor.low.toFixed(2)} and {drainFactor.high.toFixed(2)} times, most likely:
-          from how the draw was measured and how much brands differ
+          between {drainFactor.low.toFixed(2)} and {drainFactor.high.toFixed(2)} times, most likely: from how
+          the draw was measured and how much brands differ
         </Step>
         <Step title="So it looks dim" result={rangeWords(forecast.dim, tonight)}>
           {why.mahTonight > 0 && usableMah !== null && usedMah !== null
