@@ -1,4 +1,4 @@
-import { DAY_MS, eveningOf, eveningsBetween, type Instant, isEvening } from '../model/evening.ts';
+import { DAY_MS, eveningsBetween, type Instant, isEvening, localDateOf } from '../model/evening.ts';
 import type { Prop } from '../model/prop.ts';
 import { yearFaults } from './known-years.ts';
 import type { Fault } from './refusal.ts';
@@ -19,8 +19,8 @@ export function momentFaults(at: Instant, options: { now: Instant; timeZone: str
   const unknown = yearFaults(at, 'at');
   if (unknown.length > 0) return unknown;
   if (at <= now + FURTHEST_AHEAD_MS) return [];
-  const date = dateOf(at, timeZone);
-  const today = dateOf(now, timeZone);
+  const date = localDateOf(at, timeZone);
+  const today = localDateOf(now, timeZone);
   const days = eveningsBetween(today, date);
   const swapped = `${date.slice(0, 4)}-${date.slice(8)}-${date.slice(5, 7)}`;
   const since = isEvening(swapped) ? eveningsBetween(swapped, today) : -1;
@@ -35,11 +35,6 @@ export function momentFaults(at: Instant, options: { now: Instant; timeZone: str
  */
 export function cellsOf(prop: Prop): number {
   return prop.units * prop.series * prop.parallel;
-}
-
-// Half a day on, the evening's name is the calendar date.
-function dateOf(at: Instant, timeZone: string): string {
-  return eveningOf(at + DAY_MS / 2, timeZone);
 }
 
 const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];

@@ -1,5 +1,5 @@
 import type { TypicalYear } from '../model/climate.ts';
-import { addEvenings, eveningOf, HOUR_MS, type Instant, wallTimeOf } from '../model/evening.ts';
+import { HOUR_MS, localDateOf } from '../model/evening.ts';
 import type { ObservedHours } from '../model/weather.ts';
 import { readEpw } from './epw.ts';
 import { isGhcnDailyCsv, readGhcnDailyCsv } from './ghcn-daily-csv.ts';
@@ -171,8 +171,8 @@ function timeTempFile(
     ],
     typicalYear: null,
     hours,
-    from: localDate(kept[0]!.at, timeZone),
-    through: localDate(kept[kept.length - 1]!.at, timeZone),
+    from: localDateOf(kept[0]!.at, timeZone),
+    through: localDateOf(kept[kept.length - 1]!.at, timeZone),
   };
 }
 
@@ -203,11 +203,6 @@ function seldomWarning(kept: readonly Reading[]): string | null {
   const usual = hours.sort((one, other) => one - other)[Math.floor(hours.length / 2)]!;
   if (usual <= 4) return null;
   return `Readings come every ${Math.round(usual)} h, too seldom for the course of a night: hourly ones are needed.`;
-}
-
-function localDate(at: Instant, timeZone: string): string {
-  const evening = eveningOf(at, timeZone);
-  return wallTimeOf(at, timeZone) < '12:00' ? addEvenings(evening, 1) : evening;
 }
 
 function present(warning: string | null): string[] {

@@ -35,6 +35,17 @@ export function isEvening(text: string): boolean {
 }
 
 /**
+ * The calendar date at an instant: up to noon the evening's own name is still that of the day before.
+ * @param at the instant
+ * @param timeZone IANA zone
+ * @throws ProgrammerError outside 1900..2199 or for an unknown zone
+ */
+export function localDateOf(at: Instant, timeZone: string): Evening {
+  const evening = eveningOf(at, timeZone);
+  return wallTimeOf(at, timeZone) < '12:00' ? addEvenings(evening, 1) : evening;
+}
+
+/**
  * The evening so many evenings later; calendar arithmetic only.
  * @param evening where to start
  * @param count evenings to go on, negative to go back

@@ -73,6 +73,11 @@ export function saveHours(db: Db, siteId: string, hours: ObservedHours): void {
   }
 }
 
+/** Takes every imported hour away; false when there were none. */
+export function removeHours(db: Db, siteId: string): boolean {
+  return db.delete(weatherMonths).where(eq(weatherMonths.siteId, siteId)).run().changes > 0;
+}
+
 /** The site's typical year and the name of its station, or null. */
 export function findTypicalYear(db: Db, siteId: string): (TypicalYear & { stationName: string }) | null {
   const row = db.select().from(typicalYears).where(eq(typicalYears.siteId, siteId)).get();
@@ -98,6 +103,11 @@ export function saveTypicalYear(db: Db, siteId: string, year: TypicalYear & { st
     .values({ siteId, ...row })
     .onConflictDoUpdate({ target: typicalYears.siteId, set: row })
     .run();
+}
+
+/** Takes the typical year away; false when there was none. */
+export function removeTypicalYear(db: Db, siteId: string): boolean {
+  return db.delete(typicalYears).where(eq(typicalYears.siteId, siteId)).run().changes > 0;
 }
 
 /** The nights somebody typed, by evening, in order. */

@@ -28,7 +28,9 @@ DELETE /api/sites/{siteId}
 PUT /api/sites/{siteId}/show-nights
 GET /api/sites/{siteId}/show-nights
 GET /api/sites/{siteId}/nights
+GET /api/sites/{siteId}/weather
 POST /api/sites/{siteId}/weather
+DELETE /api/sites/{siteId}/weather
 PUT /api/sites/{siteId}/weather/nights/{evening}
 GET /api/cell-types
 POST /api/cell-types
@@ -149,7 +151,8 @@ test('an unknown id is 404 in the same words on every route', async () => {
     const [method, template] = name.split(' ') as [string, string];
     if (!template.includes('{') || template.startsWith('/calendars')) continue;
     const path = template.replace('{evening}', '2026-10-20').replace(/\{\w+\}/g, 'nobody');
-    const asked = ask[method.toLowerCase() as 'get'](path);
+    const query = operationId === 'removeWeather' ? '?of=hours' : '';
+    const asked = ask[method.toLowerCase() as 'get'](`${path}${query}`);
     const answer =
       operationId === 'importWeather' || operationId === 'importProps'
         ? await asked.set('content-type', 'text/csv').send('time,tempC\n')

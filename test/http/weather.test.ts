@@ -108,6 +108,51 @@ describe('a weather file', () => {
   });
 });
 
+describe('weather in use', () => {
+  test('is told, and a file taken out again leaves the nights as they were', async () => {
+    const rig = await aRig();
+    const { site } = await aSiteWithProp(rig);
+    const address = `/api/sites/${site.id}/weather`;
+    const nights = async () =>
+      (await rig.ask.get(`/api/sites/${site.id}/nights?from=2026-10-19&through=2026-10-21`).expect(200)).body;
+    const inUse = async () => (await rig.ask.get(address).expect(200)).body;
+    const nothing = { typicalYear: null, hours: null, typedNights: [] };
+    expect(await inUse()).toEqual(nothing);
+    const before = await nights();
+    await rig.ask.post(address).set('content-type', 'text/csv').send(CSV).expect(200);
+    await rig.ask.put(`${address}/nights/2026-10-24`).send({ minC: 1, maxC: 2 }).expect(200);
+    // The hours run from 00:00 UTC on the 20th to 23:00 UTC on the 21st, which is midnight in Britain's summer time.
+    const hours = { from: '2026-10-20', through: '2026-10-22', count: 48 };
+    expect(await inUse()).toEqual({ ...nothing, hours, typedNights: ['2026-10-24'] });
+    expect(await nights()).not.toEqual(before);
+    const forecast = await rig.ask.get(`/api/sites/${site.id}/forecast`).expect(200);
+    await rig.ask.delete(`${address}?of=hours`).expect(204);
+    expect(await inUse()).toEqual({ ...nothing, typedNights: ['2026-10-24'] });
+    expect(await nights()).toEqual(before);
+    const after = await rig.ask.get(`/api/sites/${site.id}/forecast`).expect(200);
+    expect(after.headers.etag).not.toBe(forecast.headers.etag);
+  });
+
+  test('of another site stays, and what is not there or not said is refused', async () => {
+    const rig = await aRig();
+    const { site } = await aSiteWithProp(rig);
+    const other = (await rig.ask.post('/api/sites').send(A_SITE).expect(201)).body;
+    await rig.ask
+      .post(`/api/sites/${other.id}/weather`)
+      .set('content-type', 'text/csv')
+      .send(CSV)
+      .expect(200);
+    const before = dumpOf(rig.store);
+    await rig.ask.delete(`/api/sites/${site.id}/weather?of=hours`).expect(404);
+    await rig.ask.delete(`/api/sites/${site.id}/weather?of=typical-year`).expect(404);
+    await rig.ask.delete('/api/sites/nobody/weather?of=hours').expect(404);
+    const { body } = await rig.ask.delete(`/api/sites/${other.id}/weather`).expect(400);
+    expect(body.errors[0].field).toBe('of');
+    await rig.ask.delete(`/api/sites/${other.id}/weather?of=everything`).expect(400);
+    expect(dumpOf(rig.store)).toBe(before);
+  });
+});
+
 const FARGO = join(packageRoot(), '..', 'shared', 'reference', 'weather', 'fargo_nd_727530_tmy3.epw');
 
 describe.runIf(existsSync(FARGO))('a published typical year', () => {
@@ -124,6 +169,11 @@ describe.runIf(existsSync(FARGO))('a published typical year', () => {
       .send(readFileSync(FARGO))
       .expect(200);
     expect(imported.body).toMatchObject({ format: 'epw', rows: 8760, warnings: [] });
+    const weather = `/api/sites/${site.id}/weather`;
+    expect((await ask.get(weather).expect(200)).body).toMatchObject({
+      typicalYear: { stationName: imported.body.station.name },
+      hours: null,
+    });
     const nights = (await ask.get(address).expect(200)).body;
     for (const [index, night] of nights.entries()) {
       expect(night.weather).toBe('climate');
@@ -131,5 +181,7 @@ describe.runIf(existsSync(FARGO))('a published typical year', () => {
       expect(night.meanC).toBeLessThan(-5);
       expect(night.meanC).toBeLessThan(milder[index].meanC);
     }
+    await ask.delete(`${weather}?of=typical-year`).expect(204);
+    expect((await ask.get(address).expect(200)).body).toEqual(milder);
   });
 });

@@ -1,10 +1,19 @@
 import type { FastifyInstance } from 'fastify';
 import type { Deps } from '../../actions/deps.ts';
 import { importWeather } from '../../actions/import-weather.ts';
+import { removeWeather } from '../../actions/remove-weather.ts';
 import { typeNight, untypeNight } from '../../actions/type-night.ts';
+import { weatherInUse } from '../../actions/weather-in-use.ts';
 import { FILE_LIMIT_BYTES, FILE_TYPES, fileTextIn } from '../files.ts';
 import { NoContent } from '../responses.ts';
-import { KeptTypedNight, TypedNight, WeatherImported, WeatherQuery } from '../schemas/sites.ts';
+import {
+  KeptTypedNight,
+  TypedNight,
+  WeatherImported,
+  WeatherInUse,
+  WeatherQuery,
+  WeatherRemovalQuery,
+} from '../schemas/sites.ts';
 
 type OfSite = { Params: { siteId: string } };
 type OfNight = { Params: { siteId: string; evening: string } };
@@ -27,6 +36,34 @@ export function weatherRoutes(app: FastifyInstance, deps: Deps): void {
     async (request) => {
       const text = await fileTextIn(request);
       return importWeather(deps, { ...request.params, ...request.query, text });
+    },
+  );
+
+  app.get<OfSite>(
+    '/api/sites/:siteId/weather',
+    {
+      schema: {
+        operationId: 'weatherInUse',
+        summary: 'Which files and typed nights the forecasts of a site rest on',
+        response: { 200: WeatherInUse },
+      },
+    },
+    async (request) => weatherInUse(deps, request.params),
+  );
+
+  app.delete<OfSite & { Querystring: WeatherRemovalQuery }>(
+    '/api/sites/:siteId/weather',
+    {
+      schema: {
+        operationId: 'removeWeather',
+        summary: 'Take the typical year, or every imported hour, out again',
+        querystring: WeatherRemovalQuery,
+        response: { 204: NoContent },
+      },
+    },
+    async (request, reply) => {
+      removeWeather(deps, { ...request.params, ...request.query });
+      return reply.code(204).send();
     },
   );
 

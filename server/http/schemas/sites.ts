@@ -137,6 +137,23 @@ export const WeatherQuery = Type.Object(
   closed,
 );
 
+export const WeatherInUse = Type.Object({
+  typicalYear: Nullable(Type.Object({ stationName: Type.String() })),
+  hours: Nullable(
+    Type.Object({
+      from: EveningField,
+      through: EveningField,
+      count: Type.Integer({ description: 'Hours with a temperature, of those between the two dates.' }),
+    }),
+  ),
+  typedNights: Type.Array(EveningField),
+});
+
+export const WeatherRemovalQuery = Type.Object(
+  { of: oneOf(['typical-year', 'hours'], { slip: 'Say what to take out: ?of=typical-year or ?of=hours.' }) },
+  closed,
+);
+
 export const SitesQuery = Type.Object(
   {
     limit: Type.Optional(whole(1, 1000)),
@@ -174,5 +191,7 @@ export type TypedNight = Static<typeof TypedNight>;
 export type WeatherImported = Static<typeof WeatherImported>;
 export type ShowNights = Static<typeof ShowNights>;
 export type NightsQuery = Static<typeof NightsQuery>;
+export type WeatherInUse = Static<typeof WeatherInUse>;
+export type WeatherRemovalQuery = Static<typeof WeatherRemovalQuery>;
 export type WeatherQuery = Static<typeof WeatherQuery>;
 export type SitesQuery = Static<typeof SitesQuery>;
