@@ -22,6 +22,7 @@ import type {
   Swap,
   TypedNight,
   WeatherImported,
+  WeatherInUse,
 } from './types.ts';
 
 export type Answer<T> = { ok: true; value: T } | { ok: false; problem: Problem };
@@ -105,6 +106,9 @@ export const api = {
     request<ShowNight[]>('PUT', `/sites/${siteId}/show-nights`, { json: nights }),
   importWeather: (siteId: string, file: Blob) =>
     request<WeatherImported>('POST', `/sites/${siteId}/weather`, { csv: file }),
+  weatherInUse: (siteId: string) => request<WeatherInUse>('GET', `/sites/${siteId}/weather`),
+  removeWeather: (siteId: string, of: 'typical-year' | 'hours') =>
+    request<null>('DELETE', `/sites/${siteId}/weather`, { query: { of } }),
   typeNight: (siteId: string, night: TypedNight & { evening: string }) =>
     request<unknown>('PUT', `/sites/${siteId}/weather/nights/${night.evening}`, {
       json: { minC: night.minC, maxC: night.maxC },

@@ -22,4 +22,5 @@ export type {
   SiteChanges,
   TypedNight,
   WeatherImported,
+  WeatherInUse,
 } from '../../server/http/schemas/sites.ts';

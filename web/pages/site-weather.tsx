@@ -4,8 +4,10 @@ import type { Night, Problem, Site, WeatherImported } from '../api/types.ts';
 import { TextField } from '../parts/field.tsx';
 import { FormTrouble, Status, Trouble } from '../parts/notice.tsx';
 import { useForm } from '../state/form.ts';
+import { useRead } from '../state/read.ts';
 import { counted, degrees } from '../words/quantity.ts';
 import { dateWords } from '../words/time.ts';
+import { WeatherInUse } from './weather-in-use.tsx';
 
 type SiteWeatherProps = { site: Site; nights: Night[]; tonight: string; onSaved: () => void };
 
@@ -33,6 +35,15 @@ function WeatherFile({ site, onSaved }: { site: Site; onSaved: () => void }) {
   const [busy, setBusy] = useState(false);
   const [imported, setImported] = useState<WeatherImported | null>(null);
   const [problem, setProblem] = useState<Problem | null>(null);
+  const inUse = useRead(`weather ${site.id}`, () => api.weatherInUse(site.id));
+  const changed = () => {
+    onSaved();
+    void inUse.again();
+  };
+  const remove = () => {
+    setImported(null);
+    changed();
+  };
   const take = async (file: File | undefined) => {
     if (!file) return;
     setBusy(true);
@@ -40,7 +51,7 @@ function WeatherFile({ site, onSaved }: { site: Site; onSaved: () => void }) {
     setBusy(false);
     setImported(answer.ok ? answer.value : null);
     setProblem(answer.ok ? null : answer.problem);
-    if (answer.ok) onSaved();
+    if (answer.ok) changed();
   };
   return (
     <>
@@ -59,6 +70,7 @@ function WeatherFile({ site, onSaved }: { site: Site; onSaved: () => void }) {
         </span>
       </div>
       {problem && <Trouble problem={problem} />}
+      {inUse.value && <WeatherInUse site={site} inUse={inUse.value} onRemoved={remove} />}
       <Status>
         {busy && 'Reading the file …'}
         {imported && !busy && <ImportedWords imported={imported} />}
