@@ -1,5 +1,5 @@
 import { DAY_MS, eveningsBetween, type Instant, isEvening, localDateOf } from '../model/evening.ts';
-import type { Prop } from '../model/prop.ts';
+import { dateWords } from '../planning/evening-words.ts';
 import { yearFaults } from './known-years.ts';
 import type { Fault } from './refusal.ts';
 
@@ -24,21 +24,7 @@ export function momentFaults(at: Instant, options: { now: Instant; timeZone: str
   const days = eveningsBetween(today, date);
   const swapped = `${date.slice(0, 4)}-${date.slice(8)}-${date.slice(5, 7)}`;
   const since = isEvening(swapped) ? eveningsBetween(swapped, today) : -1;
-  const guess = since >= 0 && since <= RECENT_EVENINGS ? inWords(swapped) : `today, ${inWords(today)}`;
-  const message = `This is dated ${inWords(date)}, ${days} days ahead. Was it ${guess}?`;
+  const guess = since >= 0 && since <= RECENT_EVENINGS ? dateWords(swapped) : `today, ${dateWords(today)}`;
+  const message = `This is dated ${dateWords(date)}, ${days} days ahead. Was it ${guess}?`;
   return [{ field: 'at', message }];
-}
-
-/**
- * How many cells a prop takes: all its units together, a factory-made block counted as one.
- * @param prop the prop
- */
-export function cellsOf(prop: Prop): number {
-  return prop.units * prop.series * prop.parallel;
-}
-
-const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
-
-function inWords(date: string): string {
-  return `${Number(date.slice(8))} ${MONTHS[Number(date.slice(5, 7)) - 1]} ${date.slice(0, 4)}`;
 }

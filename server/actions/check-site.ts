@@ -6,6 +6,7 @@ import {
   standardOffsetHours,
 } from '../model/evening.ts';
 import type { Site } from '../model/site.ts';
+import { MONTHS } from '../planning/evening-words.ts';
 import { eveningFaults } from './known-years.ts';
 import { didYouMean, nearNames } from './near-names.ts';
 import type { Fault } from './refusal.ts';
@@ -14,20 +15,6 @@ import type { Fault } from './refusal.ts';
 export const LONGEST_SEASON = 400;
 // A zone's clock runs up to about 3.5 h off the sun where a country is wide; 5 h is a slip of sign.
 const WIDEST_ZONE_HOURS = 5;
-const MONTHS = [
-  'January',
-  'February',
-  'March',
-  'April',
-  'May',
-  'June',
-  'July',
-  'August',
-  'September',
-  'October',
-  'November',
-  'December',
-];
 
 /**
  * What is wrong with a site beyond single fields: dates that do not exist, a zone nobody knows, a place and a zone

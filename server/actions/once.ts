@@ -1,3 +1,4 @@
+import { DAY_MS } from '../model/evening.ts';
 import { dropReplaysBefore, findReplay, saveReplay } from '../store/replays.ts';
 import type { Deps } from './deps.ts';
 import { Refusal } from './refusal.ts';
@@ -8,7 +9,6 @@ export type Answer = { status: number; body: string };
 
 // Phones come back late: a swap noted on a round may be sent again weeks later.
 const KEPT_DAYS = 60;
-const DAY_MS = 86_400_000;
 
 /**
  * Does a deed at most once. The first answer is kept in the same transaction as the deed; the same request again

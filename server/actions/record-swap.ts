@@ -1,10 +1,11 @@
 import { HOUR_MS, wallTimeOf } from '../model/evening.ts';
 import type { LogEntry, Swap } from '../model/log-entry.ts';
 import type { Prop } from '../model/prop.ts';
+import { cellsIn } from '../model/set-in-use.ts';
 import { insertEntry, propLog } from '../store/log.ts';
 import type { Db } from '../store/open.ts';
 import { raiseRevision } from '../store/sites.ts';
-import { cellsOf, momentFaults } from './check-entry.ts';
+import { momentFaults } from './check-entry.ts';
 import type { Deps } from './deps.ts';
 import { findCellTypeAnywhere, unknownCellTypeFault } from './find-cell-type.ts';
 import { propOf } from './find-prop.ts';
@@ -50,7 +51,7 @@ function tidy(swap: NewSwap): NewSwap {
 
 function swapFaults(db: Db, { prop, swap, deps }: { prop: Prop; swap: NewSwap; deps: Deps }): Fault[] {
   const faults: Fault[] = [];
-  const holds = cellsOf(prop);
+  const holds = cellsIn(prop);
   if (swap.cells !== undefined && swap.cells > holds) {
     const message = `${prop.tag} takes ${holds} ${holds === 1 ? 'cell' : 'cells'}, and ${swap.cells} were given. Were some of them for another prop?`;
     faults.push({ field: 'cells', message });
@@ -67,7 +68,7 @@ function swapFaults(db: Db, { prop, swap, deps }: { prop: Prop; swap: NewSwap; d
 function hintsFor(swap: Swap, about: { prop: Prop; timeZone: string; log: LogEntry[] }): string[] {
   const { prop, timeZone, log } = about;
   const hints: string[] = [];
-  const holds = cellsOf(prop);
+  const holds = cellsIn(prop);
   if (swap.cells !== undefined && swap.cells < holds)
     hints.push(
       `${swap.cells} of ${holds} changed: the oldest cells decide when it goes dim. Change them all together if you can.`,

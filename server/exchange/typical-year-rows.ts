@@ -1,5 +1,4 @@
-import type { TypicalYear } from '../model/climate.ts';
-import { hourMissingThroughout, YEAR_HOURS } from '../model/climate.ts';
+import { hourMissingThroughout, MONTH_STARTS, type TypicalYear, YEAR_HOURS } from '../model/climate.ts';
 import { numberOrNaN } from './csv-fields.ts';
 import type { Station } from './station.ts';
 import { COLDEST_C, HOTTEST_C } from './time-temp-csv.ts';
@@ -26,7 +25,6 @@ export type WrittenRow = {
   temp: string;
 };
 
-const MONTH_STARTS = [0, 31, 59, 90, 120, 151, 181, 212, 243, 273, 304, 334, 365] as const;
 const LEAST_KNOWN_SHARE = 0.9;
 const SHORT_GAP_HOURS = 3;
 const LONGEST_GAP_HOURS = 14 * 24;

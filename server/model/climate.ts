@@ -53,7 +53,7 @@ const SHAPE_RANGE = 2.10093;
 const SMOOTHING_DAYS = 22;
 
 /** First day (0 = 1 January) of each month in a year of 365 days, and the year's end. */
-const MONTH_STARTS = [0, 31, 59, 90, 120, 151, 181, 212, 243, 273, 304, 334, 365] as const;
+export const MONTH_STARTS = [0, 31, 59, 90, 120, 151, 181, 212, 243, 273, 304, 334, 365] as const;
 
 /** Where in the year (0..1) the middle of each month falls; February counts 28.25 days. */
 const MONTH_MIDDLES = [31, 28.25, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31].map(

@@ -1,11 +1,34 @@
 import { type Evening, weekdayOf } from '../model/evening.ts';
 
 const WEEKDAYS = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'];
-const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
+/** January first. */
+export const MONTHS = [
+  'January',
+  'February',
+  'March',
+  'April',
+  'May',
+  'June',
+  'July',
+  'August',
+  'September',
+  'October',
+  'November',
+  'December',
+];
 
 /** An evening in words: 'Thu 22 Oct'. */
 export function eveningWords(evening: Evening): string {
-  return `${WEEKDAYS[weekdayOf(evening) - 1]} ${Number(evening.slice(8, 10))} ${MONTHS[Number(evening.slice(5, 7)) - 1]}`;
+  return `${WEEKDAYS[weekdayOf(evening) - 1]} ${dayWords(evening)}`;
+}
+
+/** A date with its year: '22 Oct 2026'. */
+export function dateWords(date: Evening): string {
+  return `${dayWords(date)} ${date.slice(0, 4)}`;
+}
+
+function dayWords(date: Evening): string {
+  return `${Number(date.slice(8))} ${MONTHS[Number(date.slice(5, 7)) - 1]!.slice(0, 3)}`;
 }
 
 /** A range of evenings in words; `beyond` stands for an end that lies past the season. */

@@ -12,7 +12,10 @@ import { StoreError } from './store-error.ts';
 /** The table and columns drizzle's own migrator uses, so that its tools can read them. */
 const APPLIED = '__drizzle_migrations';
 
-/** The built code lies one folder deeper than the source, so the folder is found from package.json. */
+/**
+ * The built code lies one folder deeper than the source, so the folder is found from package.json. The settings look
+ * for it alike; a store opens without them, and each says in its own words what is missing.
+ */
 function migrationsFolder(): string {
   let folder = path.dirname(fileURLToPath(import.meta.url));
   while (!existsSync(path.join(folder, 'package.json'))) {
