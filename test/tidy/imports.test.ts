@@ -63,7 +63,6 @@ const RULES: Rule[] = [
         '@fastify/swagger',
         '@fastify/multipart',
         '@fastify/rate-limit',
-        '@fastify/type-provider-typebox',
         'typebox',
       ),
     ],
@@ -78,7 +77,7 @@ const RULES: Rule[] = [
   { room: 'server/clock.ts', may: [room('model')], because: 'the only reader of the clock' },
   {
     room: 'server/app.ts',
-    may: [/^server\//, /^node:/, npm('fastify', '@fastify/type-provider-typebox')],
+    may: [/^server\//, /^node:/, npm('fastify')],
     because: 'the only wiring place',
   },
   {
