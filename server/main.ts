@@ -23,7 +23,9 @@ export async function serve(
   const store = given.store ?? openStore(config.db, { onProgress: say });
   const clock = given.clock ?? (config.asOf === null ? systemClock() : fixedClock(config.asOf));
   const app = buildApp({ store, clock, publicUrl: config.publicUrl, logLevel: 'error' });
+  let isClosing = false;
   const close = async () => {
+    isClosing = true;
     await app.close();
     store.close();
   };
@@ -35,21 +37,23 @@ export async function serve(
   }
   const { port } = app.server.address() as AddressInfo;
   const url = `http://${config.host.includes(':') ? `[${config.host}]` : config.host}:${port}/`;
-  say(`Duskround serves ${config.db} at ${url}`);
   const served = { url, close };
-  if (given.onListening) given.onListening(served);
-  await reckonAhead(app);
+  // Before anybody is told, since whoever reads that it serves may end it at once.
+  given.onListening?.(served);
+  say(`Duskround serves ${config.db} at ${url}`);
+  await reckonAhead(app, () => isClosing);
   return served;
 }
 
 /** Sites whose forecast is reckoned before anybody asks: the first answer of a fresh process would be its slowest. */
 const SITES_AHEAD = 3;
 
-async function reckonAhead(app: ReturnType<typeof buildApp>): Promise<void> {
+async function reckonAhead(app: ReturnType<typeof buildApp>, isClosing: () => boolean): Promise<void> {
   const headers = { host: 'localhost' };
   const sites = await app.inject({ url: `/api/sites?limit=${SITES_AHEAD}`, headers });
   if (sites.statusCode !== 200) return;
   for (const { id } of sites.json<{ id: string }[]>()) {
+    if (isClosing()) return;
     await app.inject({ url: `/api/sites/${id}/forecast`, headers });
   }
 }

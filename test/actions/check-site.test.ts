@@ -3,7 +3,7 @@ import { siteFaults } from '../../server/actions/check-site.ts';
 import type { Site } from '../../server/model/site.ts';
 import { A_SITE } from '../rig/a-site.ts';
 
-const at = (timeZone: string, longitudeDeg: number) =>
+const at = (timeZone: string, longitudeDeg: number, latitudeDeg = A_SITE.latitudeDeg) =>
   siteFaults({
     ...(A_SITE as Site),
     id: 's',
@@ -12,6 +12,7 @@ const at = (timeZone: string, longitudeDeg: number) =>
     zoneOffsetsC: {},
     timeZone,
     longitudeDeg,
+    latitudeDeg,
   });
 
 // Longitudes from memory of an atlas; all belong to places that keep the zone named.
@@ -40,4 +41,9 @@ test.each([
   expect(at(timeZone, longitudeDeg)).toEqual([
     { field: 'longitudeDeg', message: expect.stringContaining(says) },
   ]);
+});
+
+test('near a pole every longitude goes with every zone', () => {
+  expect(at('Pacific/Auckland', -45, -89.9)).toEqual([]);
+  expect(at('Pacific/Auckland', -45, -60)).toHaveLength(1);
 });

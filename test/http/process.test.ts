@@ -93,6 +93,26 @@ test('what was acknowledged survives kill -9, and its replay is still known', as
   expect(second.errors()).toBe('');
 }, 60_000);
 
+test('asked to end while it still reckons ahead, it ends cleanly', async () => {
+  const settings = { DUSKROUND_DB: aFile(), DUSKROUND_AS_OF: '2026-10-22T09:00:00Z' };
+  const first = await listening(settings);
+  for (const name of ['Alder', 'Beech', 'Cedar']) {
+    const site = await sent(`${first.url}/api/sites`, { ...A_SITE, name });
+    for (let count = 0; count < 20; count++) {
+      const prop = await sent(`${first.url}/api/props`, aProp(site.id, { tag: `A-${count}` }));
+      await sent(`${first.url}/api/props/${prop.id}/swaps`, { at: '2026-10-20T15:00:00Z', state: 'new' });
+    }
+  }
+  first.child.kill('SIGTERM');
+  await once(first.child, 'exit');
+
+  const second = await listening(settings);
+  const stopped = once(second.child, 'exit');
+  second.child.kill('SIGTERM');
+  expect(await stopped).toEqual([0, null]);
+  expect(second.errors()).toBe('');
+}, 60_000);
+
 test('a taken port, a bad setting and a file that is no database are told in one sentence', async () => {
   const first = await listening({ DUSKROUND_DB: aFile() });
   const port = new URL(first.url).port;
