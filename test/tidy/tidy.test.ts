@@ -156,6 +156,11 @@ type Schema = {
   properties?: Record<string, Schema>;
 };
 
+// Put together from pieces, so that this file does not hold what it looks for.
+const FOREIGN_PLACES = new RegExp(
+  [['bash', 'jobs'].join('_'), ['registry', '(npmjs|yarnpkg)'].join('\\.')].join('|'),
+);
+
 describe('documents are true', () => {
   const scripts: Record<string, string> = JSON.parse(
     readFileSync(path.join(ROOT, 'package.json'), 'utf8'),
@@ -220,7 +225,7 @@ describe('documents are true', () => {
     );
     const faults = texts.filter((name) => {
       const file = path.join(ROOT, name);
-      return /bash_jobs|registry\.(npmjs|yarnpkg)/.test(readFileSync(file, 'utf8')) && name !== OWN;
+      return FOREIGN_PLACES.test(readFileSync(file, 'utf8')) && name !== OWN;
     });
     expect(faults).toEqual([]);
   });
