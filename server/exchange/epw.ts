@@ -1,5 +1,5 @@
 import { numberOrNaN } from './csv-fields.ts';
-import type { Station } from './station.ts';
+import { type HeaderForm, stationOfHeader } from './station.ts';
 import {
   gatherTypicalYear,
   type TypicalYearFile,
@@ -20,36 +20,18 @@ const LEAST_MISSING_C = 99.9;
  * @throws WeatherFileError when the header or a tenth of the year is missing
  */
 export function readEpw(lines: readonly string[]): TypicalYearFile {
-  const { station, standardOffsetHours } = readLocation(lines[0]!);
+  const { station, standardOffsetHours } = stationOfHeader(lines[0]!, lines[0]!.split(','), LOCATION);
   const { firstRow, rowsPerHour } = readDataPeriods(lines);
   const readRow = (line: string) => epwRow(line, rowsPerHour);
   return gatherTypicalYear(lines, { firstRow, station, standardOffsetHours, readRow });
 }
 
-function readLocation(line: string): { station: Station; standardOffsetHours: number } {
-  // The name may hold commas, so the numbers are counted from the end.
-  const fields = line.split(',').map((field) => field.trim());
-  const [latitudeDeg, longitudeDeg, standardOffsetHours, elevationM] = fields.slice(-4).map(numberOrNaN) as [
-    number,
-    number,
-    number,
-    number,
-  ];
-  const isPlace =
-    Math.abs(latitudeDeg) <= 90 && Math.abs(longitudeDeg) <= 180 && Math.abs(standardOffsetHours) <= 14;
-  if (fields.length < 10 || !isPlace) {
-    throw new WeatherFileError(
-      `The first line, "${line.slice(0, 120)}", should end in latitude, longitude, hours from UTC and elevation. ` +
-        'Likely the header was edited: download the EPW file again and send it unchanged.',
-    );
-  }
-  const name = fields[1] || 'unnamed station';
-  const station = { name, latitudeDeg, longitudeDeg };
-  return {
-    station: Number.isFinite(elevationM) ? { ...station, elevationM } : station,
-    standardOffsetHours,
-  };
-}
+const LOCATION: HeaderForm = {
+  leastFields: 10,
+  lastFour: ['latitudeDeg', 'longitudeDeg', 'standardOffsetHours', 'elevationM'],
+  lastFourWords: 'latitude, longitude, hours from UTC and elevation',
+  formatName: 'EPW',
+};
 
 function readDataPeriods(lines: readonly string[]): { firstRow: number; rowsPerHour: number } {
   const index = lines.slice(0, HEADER_LINES).findIndex((line) => /^DATA PERIODS,/i.test(line));

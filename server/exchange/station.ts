@@ -1,7 +1,48 @@
 import { standardOffsetHours } from '../model/evening.ts';
+import { numberOrNaN } from './csv-fields.ts';
+import { WeatherFileError } from './weather-file-error.ts';
 
 /** Where a file says its thermometer stands. */
 export type Station = { name: string; latitudeDeg: number; longitudeDeg: number; elevationM?: number };
+
+/** How a format writes its first line: how many fields at least, in what order the last four, and what it is called. */
+export type HeaderForm = {
+  leastFields: number;
+  lastFour: readonly ('latitudeDeg' | 'longitudeDeg' | 'standardOffsetHours' | 'elevationM')[];
+  lastFourWords: string;
+  formatName: string;
+};
+
+/**
+ * The station of a typical-year file from the fields of its first line. Its name may hold commas, so the numbers are
+ * counted from the end.
+ * @throws WeatherFileError when they are not those of a place
+ */
+export function stationOfHeader(
+  line: string,
+  written: readonly string[],
+  form: HeaderForm,
+): { station: Station; standardOffsetHours: number } {
+  const fields = written.map((field) => field.trim());
+  const numbers = fields.slice(-4).map(numberOrNaN);
+  const numberOf = (name: HeaderForm['lastFour'][number]) =>
+    numbers[form.lastFour.indexOf(name)] ?? Number.NaN;
+  const [latitudeDeg, longitudeDeg] = [numberOf('latitudeDeg'), numberOf('longitudeDeg')];
+  const [standardOffsetHours, elevationM] = [numberOf('standardOffsetHours'), numberOf('elevationM')];
+  const isPlace =
+    Math.abs(latitudeDeg) <= 90 && Math.abs(longitudeDeg) <= 180 && Math.abs(standardOffsetHours) <= 14;
+  if (fields.length < form.leastFields || !isPlace) {
+    throw new WeatherFileError(
+      `The first line, "${line.slice(0, 120)}", should end in ${form.lastFourWords}. ` +
+        `Likely the header was edited: download the ${form.formatName} file again and send it unchanged.`,
+    );
+  }
+  const station = { name: fields[1] || 'unnamed station', latitudeDeg, longitudeDeg };
+  return {
+    station: Number.isFinite(elevationM) ? { ...station, elevationM } : station,
+    standardOffsetHours,
+  };
+}
 
 /** Any recent year does: zones seldom change their standard time. */
 const OFFSET_YEAR = 2025;

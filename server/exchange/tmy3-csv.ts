@@ -1,5 +1,5 @@
-import { csvFields, numberOrNaN } from './csv-fields.ts';
-import type { Station } from './station.ts';
+import { csvFields } from './csv-fields.ts';
+import { type HeaderForm, stationOfHeader } from './station.ts';
 import {
   gatherTypicalYear,
   type TypicalYearFile,
@@ -29,7 +29,11 @@ export function isTmy3Csv(lines: readonly string[]): boolean {
  * @throws WeatherFileError when the header or a tenth of the year is missing
  */
 export function readTmy3Csv(lines: readonly string[]): TypicalYearFile {
-  const { station, standardOffsetHours } = readStation(lines[0]!);
+  const { station, standardOffsetHours } = stationOfHeader(
+    lines[0]!,
+    csvFields(lines[0]!, MOST_FIELDS) ?? [],
+    STATION,
+  );
   const tempColumn = lines[1]!.split(',').findIndex((name) => unquoted(name).toLowerCase() === TEMP_NAME);
   if (tempColumn < 2) {
     throw new WeatherFileError(
@@ -46,29 +50,12 @@ export function readTmy3Csv(lines: readonly string[]): TypicalYearFile {
   });
 }
 
-function readStation(line: string): { station: Station; standardOffsetHours: number } {
-  // The name may hold commas, so the numbers are counted from the end.
-  const fields = (csvFields(line, MOST_FIELDS) ?? []).map((field) => field.trim());
-  const [standardOffsetHours, latitudeDeg, longitudeDeg, elevationM] = fields.slice(-4).map(numberOrNaN) as [
-    number,
-    number,
-    number,
-    number,
-  ];
-  const isPlace =
-    Math.abs(latitudeDeg) <= 90 && Math.abs(longitudeDeg) <= 180 && Math.abs(standardOffsetHours) <= 14;
-  if (fields.length < 7 || !isPlace) {
-    throw new WeatherFileError(
-      `The first line, "${line.slice(0, 120)}", should end in hours from UTC, latitude, longitude and elevation. ` +
-        'Likely the header was edited: download the TMY3 file again and send it unchanged.',
-    );
-  }
-  const station = { name: fields[1] || 'unnamed station', latitudeDeg, longitudeDeg };
-  return {
-    station: Number.isFinite(elevationM) ? { ...station, elevationM } : station,
-    standardOffsetHours,
-  };
-}
+const STATION: HeaderForm = {
+  leastFields: 7,
+  lastFour: ['standardOffsetHours', 'latitudeDeg', 'longitudeDeg', 'elevationM'],
+  lastFourWords: 'hours from UTC, latitude, longitude and elevation',
+  formatName: 'TMY3',
+};
 
 function tmy3Row(line: string, tempColumn: number): TypicalYearRow | string {
   const fields = line.split(',', tempColumn + 1);
